@@ -37,6 +37,12 @@ async function makeDatabase(client: Client, database: string): Promise<void> {
   const name = escapeIdentifier(database);
   const { rowCount } = await client.query('SELECT 1 FROM pg_database WHERE datname = $1', [database]);
   if (rowCount === 0) await client.query(`CREATE DATABASE ${name} OWNER trayward_owner TEMPLATE template0 ENCODING 'UTF8'`);
+  await grantOnDatabase(client, database);
+}
+
+/** Who may connect and who may make a schema; CREATE DATABASE … TEMPLATE does not copy these, so a clone needs them again. */
+export async function grantOnDatabase(client: Client, database: string): Promise<void> {
+  const name = escapeIdentifier(database);
   await client.query(`REVOKE ALL ON DATABASE ${name} FROM PUBLIC`);
   await client.query(`GRANT CONNECT ON DATABASE ${name} TO trayward_app, trayward_readonly, trayward_queue`);
   // The queue installs and upgrades its own schema.

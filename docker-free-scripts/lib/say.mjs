@@ -1,0 +1,16 @@
+/** A failure the person at the keyboard can act on: printed as one line, without a stack. */
+export class PlainError extends Error {}
+
+export function say(line) {
+  process.stdout.write(`${line}\n`);
+}
+
+/** Runs a script's main function; a PlainError becomes one clear line and exit code 1, anything else keeps its stack. */
+export async function runScript(main) {
+  try {
+    await main();
+  } catch (error) {
+    process.stderr.write(`${error instanceof PlainError ? error.message : (error?.stack ?? error)}\n`);
+    process.exit(1);
+  }
+}

@@ -1,0 +1,5 @@
+import { testCluster } from './cluster';
+
+export default function setUp(): void {
+  testCluster();
+}

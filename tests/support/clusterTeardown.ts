@@ -1,0 +1,5 @@
+import { leaveTestCluster } from './cluster';
+
+export default function tearDown(): void {
+  leaveTestCluster();
+}
