@@ -1,0 +1,4 @@
+export * from './loanStates';
+export * from './dueTime';
+export * from './deposit';
+export * from './stoneEndings';
