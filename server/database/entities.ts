@@ -1,4 +1,20 @@
 import { CustodyEvent } from '@/server/features/custody/custody.entity';
+import { Instrument } from '@/server/features/instruments/instrument.entity';
+import { Kit } from '@/server/features/kits/kit.entity';
+import { Label } from '@/server/features/labels/label.entity';
+import { Photo } from '@/server/features/photos/photo.entity';
+import { Reading } from '@/server/features/stones/reading.entity';
+import { ReadingStrike } from '@/server/features/stones/readingStrike.entity';
+import { Stone } from '@/server/features/stones/stone.entity';
 
 /** Every entity of every feature, named here so that no folder scan decides what the database holds. */
-export const entities: (new () => object)[] = [CustodyEvent];
+export const entities: (new () => object)[] = [
+  CustodyEvent,
+  Instrument,
+  Kit,
+  Label,
+  Photo,
+  Reading,
+  ReadingStrike,
+  Stone,
+];
