@@ -6,6 +6,11 @@ import { Photo } from '@/server/features/photos/photo.entity';
 import { Reading } from '@/server/features/stones/reading.entity';
 import { ReadingStrike } from '@/server/features/stones/readingStrike.entity';
 import { Stone } from '@/server/features/stones/stone.entity';
+import { BenchSubmission } from '@/server/features/bench/benchSubmission.entity';
+import { StoneAcceptance } from '@/server/features/bench/stoneAcceptance.entity';
+import { Verdict } from '@/server/features/bench/verdict.entity';
+import { Settlement } from '@/server/features/settlement/settlement.entity';
+import { SettlementItem } from '@/server/features/settlement/settlementItem.entity';
 
 /** Every entity of every feature, named here so that no folder scan decides what the database holds. */
 export const entities: (new () => object)[] = [
