@@ -1,24 +1,29 @@
+import { BenchSubmission } from '@/server/features/bench/benchSubmission.entity';
+import { StoneAcceptance } from '@/server/features/bench/stoneAcceptance.entity';
+import { Verdict } from '@/server/features/bench/verdict.entity';
 import { CustodyEvent } from '@/server/features/custody/custody.entity';
 import { Instrument } from '@/server/features/instruments/instrument.entity';
 import { Kit } from '@/server/features/kits/kit.entity';
 import { Label } from '@/server/features/labels/label.entity';
 import { Photo } from '@/server/features/photos/photo.entity';
+import { Settlement } from '@/server/features/settlement/settlement.entity';
+import { SettlementItem } from '@/server/features/settlement/settlementItem.entity';
 import { Reading } from '@/server/features/stones/reading.entity';
 import { ReadingStrike } from '@/server/features/stones/readingStrike.entity';
 import { Stone } from '@/server/features/stones/stone.entity';
-import { BenchSubmission } from '@/server/features/bench/benchSubmission.entity';
-import { StoneAcceptance } from '@/server/features/bench/stoneAcceptance.entity';
-import { Verdict } from '@/server/features/bench/verdict.entity';
-import { Settlement } from '@/server/features/settlement/settlement.entity';
-import { SettlementItem } from '@/server/features/settlement/settlementItem.entity';
 
 /** Every entity of every feature, named here so that no folder scan decides what the database holds. */
 export const entities: (new () => object)[] = [
+  BenchSubmission,
+  StoneAcceptance,
+  Verdict,
   CustodyEvent,
   Instrument,
   Kit,
   Label,
   Photo,
+  Settlement,
+  SettlementItem,
   Reading,
   ReadingStrike,
   Stone,
