@@ -1,6 +1,9 @@
 /** A failure the person at the keyboard can act on: printed as one line, without a stack. */
 export class PlainError extends Error {}
 
+// A closed terminal must not keep a script from stopping what it started.
+for (const stream of [process.stdout, process.stderr]) stream.on('error', () => undefined);
+
 export function say(line) {
   process.stdout.write(`${line}\n`);
 }
