@@ -12,15 +12,9 @@ class ResizeObserverStub implements ResizeObserver {
   unobserve(): void {}
   disconnect(): void {}
 }
-globalThis.ResizeObserver ??= ResizeObserverStub;
+globalThis.ResizeObserver = ResizeObserverStub;
 
-window.matchMedia ??= (query: string): MediaQueryList => ({
-  matches: false,
-  media: query,
-  onchange: null,
-  addListener: () => undefined,
-  removeListener: () => undefined,
-  addEventListener: () => undefined,
-  removeEventListener: () => undefined,
-  dispatchEvent: () => false,
-});
+window.matchMedia = (query: string): MediaQueryList =>
+  Object.assign(new EventTarget(), {
+    matches: false, media: query, onchange: null, addListener: () => undefined, removeListener: () => undefined,
+  });
