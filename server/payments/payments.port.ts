@@ -19,7 +19,10 @@ export interface PaymentPort {
    * Throws `PaymentConflict` when the hold was already captured, cancelled or has lapsed.
    */
   capture(paymentIntentId: string, amountMinor: number, key: string): Promise<Payment>;
-  /** Releases a hold, or abandons a payment not yet made. Throws `PaymentConflict` when already captured or cancelled. */
+  /**
+   * Releases a hold. Throws `PaymentConflict` when it was already captured, cancelled or has lapsed, and when the
+   * student has not finished paying yet: then expire the session instead.
+   */
   cancelHold(paymentIntentId: string, key: string): Promise<Payment>;
   /** Pays back part or all of what was charged. Throws `PaymentRefused` when more than is left would go back. */
   refund(request: RefundRequest): Promise<Refund>;
@@ -50,7 +53,10 @@ export interface OpenDepositPage {
   /** May contain `{CHECKOUT_SESSION_ID}`, which the payment page replaces by the session's id. */
   returnUrl: string;
   cancelUrl: string;
-  /** Between 30 minutes and 24 hours from now (the service's own limits). */
+  /**
+   * Between 30 minutes and 24 hours from now (the service's own limits, else `PaymentRefused`). Leave a few
+   * minutes of margin, so that a retry with the same key is still inside them.
+   */
   expiresAt: Date;
   idempotencyKey: string;
 }
@@ -65,7 +71,7 @@ export interface PaymentSession {
   sessionId: string;
   /** `complete`: the student finished the page; whether money is held or charged is the payment's to say. */
   status: 'open' | 'complete' | 'expired';
-  /** Null while the page is open. */
+  /** Null until the student first tries to pay; a declined try leaves the page open with an id. */
   paymentIntentId: string | null;
   /** Null unless open. */
   url: string | null;
