@@ -4,7 +4,7 @@ import type { Attribute, CategoryValue, Observer } from '@shared/api/evidence';
 /**
  * One reading as it was taken: inserted, never changed or deleted (the application holds no such grant).
  * Exactly one of `value`, `category` and `overLimit` is set. Two weighings set `value` to the SG that follows from
- * them and keep all three figures; their `u` and `uInstrument` are then those of each weighing, in carats.
+ * them and keep all three figures; their `u` is then that of each weighing, in carats, and `uInstrument` stays null.
  */
 @Entity('reading')
 export class Reading {

@@ -3,6 +3,7 @@ import { In } from 'typeorm';
 import type { Attribute, CategoryAttribute, FieldError, NumericAttribute, RefractiveAttribute } from '@shared/api/evidence';
 import { CATEGORY_VALUES, NUMERIC_ATTRIBUTES, REFRACTIVE_ATTRIBUTES } from '@shared/api/evidence';
 import type { ReadingEntry } from '@shared/api/kits';
+import { DEFAULT_SETTINGS } from '@shared/evidence/settings';
 import { specificGravity, WATER_MAX_C, WATER_MIN_C } from '@shared/gem';
 import { Instrument } from '@/server/features/instruments/instrument.entity';
 import { isUuid } from '@/server/http/uuid';
@@ -17,9 +18,6 @@ export type ReadingColumns = Pick<
 >;
 
 export type ReadingRowResult = { readonly row: ReadingColumns } | { readonly errors: FieldError[] };
-
-/** Half of a reading's variance is taken as the instrument's own, which repeats do not reduce. Common practice, no source. */
-const INSTRUMENT_SHARE_OF_VARIANCE = 0.5;
 
 /** A reading may lie this far above the liquid's limit before it cannot have been read: the width of the shadow edge. */
 const EDGE_RI = 0.005;
@@ -105,8 +103,7 @@ type NumberColumns = Partial<ReadingColumns> | { readonly errors: FieldError[] }
 function numberColumns(entry: ReadingEntry, attribute: NumericAttribute, instrument: Instrument | null): NumberColumns {
   const u = (attribute === 'ri_spot' ? instrument?.spotUncertainty : instrument?.standardUncertainty) ?? null;
   if (u === null) return wrong('instrumentId', `The register does not say how uncertain a reading of ${instrument?.name ?? 'this instrument'} is. Add it there first.`);
-  const uncertain = { u, uInstrument: u * Math.sqrt(INSTRUMENT_SHARE_OF_VARIANCE) };
-  if (attribute === 'sg') return weighingColumns(entry, uncertain);
+  if (attribute === 'sg') return weighingColumns(entry, u);
   const limit = instrument?.liquidLimitRi ?? null;
   if (entry.overLimit === true) {
     return limit === null ? wrong('overLimit', `The register does not say how high ${instrument?.name ?? 'this instrument'} reads. Add it there first.`) : { overLimit: limit };
@@ -117,20 +114,21 @@ function numberColumns(entry: ReadingEntry, attribute: NumericAttribute, instrum
   if (isRefractive(attribute) && limit !== null && value > limit + EDGE_RI) {
     return wrong('value', `${instrument?.name ?? 'This instrument'} reads up to ${limit}. Enter it as over the limit.`);
   }
-  return { value, ...uncertain };
+  return { value, u, uInstrument: u * DEFAULT_SETTINGS.instrumentShare };
 }
 
-function weighingColumns(entry: ReadingEntry, uncertain: { u: number; uInstrument: number }): NumberColumns {
+/** `uInstrument` stays open: the engine works out the instrument's part of the SG's uncertainty from the weighings. */
+function weighingColumns(entry: ReadingEntry, u: number): NumberColumns {
   const { airCt = Number.NaN, waterCt = Number.NaN, waterC = Number.NaN } = entry;
   const air = implausible('weight_ct', airCt);
   if (air !== undefined) return wrong('airCt', air);
   if (!(waterCt >= 0 && waterCt < airCt)) return wrong('waterCt', 'The reading in water must be 0 or more and below the reading in air. Weigh again.');
   if (!(waterC >= WATER_MIN_C && waterC <= WATER_MAX_C)) return wrong('waterC', `The water must be between ${WATER_MIN_C} and ${WATER_MAX_C} °C.`);
-  const { value } = specificGravity({ airCt, waterCt, waterC, uCt: uncertain.u });
+  const { value } = specificGravity({ airCt, waterCt, waterC, uCt: u });
   if (implausible('sg', value) !== undefined) {
     return wrong('waterCt', `These weights give a specific gravity of ${value.toFixed(2)}; it lies between ${PLAUSIBLE.sg.min} and ${PLAUSIBLE.sg.max}. Weigh again.`);
   }
-  return { value, airCt, waterCt, waterC, ...uncertain };
+  return { value, airCt, waterCt, waterC, u };
 }
 
 const wrong = (field: string, message: string): { errors: FieldError[] } => ({ errors: [{ field, message }] });

@@ -1,0 +1,45 @@
+import { Type } from 'class-transformer';
+import { ArrayMaxSize, ArrayMinSize, IsArray, IsBoolean, IsIn, IsNumber, IsString, IsUUID, MaxLength, MinLength, ValidateNested } from 'class-validator';
+import { ATTRIBUTES, CATEGORY_VALUES, type Attribute, type CategoryValue } from '@shared/api/evidence';
+import type { IntakeReadingsRequest, ReadingEntry, StrikeRequest } from '@shared/api/kits';
+import { Optional } from '@/server/http/optional';
+
+/** One reading as entered, at intake and at the bench. What fits its attribute and instrument is checked by `toReadingRow`. */
+export class ReadingEntryDto implements ReadingEntry {
+  @IsIn(ATTRIBUTES)
+  attribute: Attribute;
+
+  @Optional() @IsNumber()
+  value?: number;
+
+  @Optional() @IsIn([...new Set(Object.values(CATEGORY_VALUES).flat())])
+  category?: CategoryValue;
+
+  @Optional() @IsBoolean()
+  overLimit?: boolean;
+
+  @Optional() @IsNumber()
+  airCt?: number;
+
+  @Optional() @IsNumber()
+  waterCt?: number;
+
+  @Optional() @IsNumber()
+  waterC?: number;
+
+  @Optional() @IsUUID()
+  instrumentId?: string;
+
+  @Optional() @IsString() @MaxLength(300)
+  note?: string;
+}
+
+export class IntakeReadingsDto implements IntakeReadingsRequest {
+  @IsArray() @ArrayMinSize(1) @ArrayMaxSize(60) @ValidateNested({ each: true }) @Type(() => ReadingEntryDto)
+  readings: ReadingEntryDto[];
+}
+
+export class StrikeDto implements StrikeRequest {
+  @IsString() @MinLength(3) @MaxLength(300)
+  reason: string;
+}
