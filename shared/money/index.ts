@@ -1,1 +1,3 @@
 export * from './money';
+export * from './postings';
+export * from './balances';
