@@ -27,12 +27,21 @@ export function children({ logFolder }) {
       cwd: root, env: { ...process.env, ...environment }, detached: true, stdio: ['ignore', log, log, 'ipc'],
     });
     closeSync(log);
-    const ended = new Promise((resolve) => child.once('exit', (code, signal) => {
+    const entry = { name, child, expected: false };
+    entry.ended = new Promise((resolve) => child.once('exit', (code, signal) => {
       resolve();
-      if (!stopping) reportDeath({ name, reason: signal ? `was ended by ${signal}` : `ended with code ${code}`, lines: tail(logFile(name)) });
+      if (!stopping && !entry.expected) reportDeath({ name, reason: signal ? `was ended by ${signal}` : `ended with code ${code}`, lines: tail(logFile(name)) });
     }));
-    started.push({ name, child, ended });
+    started.push(entry);
     return child;
+  }
+
+  /** Ends one process at once, as a power cut would; for tests of what survives that. */
+  async function kill(name) {
+    const entry = started.findLast((one) => one.name === name);
+    entry.expected = true;
+    signalGroup(entry.child, 'SIGKILL');
+    await entry.ended;
   }
 
   /** Asks all to stop, last started first, and ends by force what has not stopped in time. */
@@ -46,7 +55,7 @@ export function children({ logFolder }) {
     }));
   }
 
-  return { start, stop, death, logFile };
+  return { start, stop, kill, death, logFile };
 }
 
 function signalGroup(child, signal) {

@@ -2,12 +2,11 @@ import { existsSync, mkdirSync, readFileSync, rmSync, writeFileSync } from 'node
 import path from 'node:path';
 import { children } from './children.mjs';
 import { prepareDatabase, runServerScript } from './database.mjs';
-import { untilHealthy, untilListening } from './health.mjs';
 import { keepOrChoosePort, portIsFree } from './ports.mjs';
 import { cluster } from './postgres.mjs';
 import { PlainError, say } from './say.mjs';
 import { keptState } from './secrets.mjs';
-import { stackEnvironment, stackProcesses } from './stack.mjs';
+import { stackEnvironment, startStack } from './stack.mjs';
 import { ensureWebExport } from './webExport.mjs';
 
 const demoPassword = 'crossed-polars';
@@ -54,13 +53,7 @@ async function start({ folder, port, host, state, save, database, processes, sig
   runServerScript('server/database/seed/main.ts', { environment: stackEnvironment({ ...shared, webFolder: '' }) });
 
   const environment = stackEnvironment({ ...shared, webFolder: await webExport });
-  for (const { name, args } of stackProcesses) processes.start(name, args, environment);
-  const died = processes.death.then(({ name, reason, lines }) => {
-    throw new PlainError(`The ${name} process ${reason} while starting. Its last lines:\n${lines}`);
-  });
-  const ready = Promise.all([
-    untilHealthy(`http://${environment.HOST === '0.0.0.0' ? '127.0.0.1' : environment.HOST}:${port}/api/v1/health`), untilListening(ports.paymentFake), untilListening(ports.smtp), untilListening(ports.inbox)]);
-  await Promise.race([ready, died]);
+  await startStack({ processes, environment });
   greet({ environment, folder });
 }
 

@@ -1,5 +1,7 @@
 import { databaseEnvironment } from './database.mjs';
+import { untilHealthy, untilListening } from './health.mjs';
 import { runTs } from './paths.mjs';
+import { PlainError } from './say.mjs';
 
 /**
  * The environment of one whole stack on loopback: server, worker, payment fake and mail inbox.
@@ -33,9 +35,23 @@ export function stackEnvironment({ mode, state, ports, folder, webFolder, host =
 }
 
 /** The processes of a stack in the order of their start: what others talk to comes first. */
-export const stackProcesses = [
-  { name: 'payment-fake', args: runTs('server/payments/fake/main.ts') },
-  { name: 'inbox', args: runTs('server/mail/inbox/main.ts') },
-  { name: 'server', args: runTs('server/main.ts') },
-  { name: 'worker', args: runTs('server/jobs/main.ts') },
-];
+const stackProcesses = {
+  'payment-fake': 'server/payments/fake/main.ts',
+  inbox: 'server/mail/inbox/main.ts',
+  server: 'server/main.ts',
+  worker: 'server/jobs/main.ts',
+};
+
+/** Starts one or all of a stack's processes and waits until all are healthy, or tells which one died and why. */
+export async function startStack({ processes, environment, names = Object.keys(stackProcesses) }) {
+  for (const name of names) processes.start(name, runTs(stackProcesses[name]), environment);
+  const died = processes.death.then(({ name, reason, lines }) => {
+    throw new PlainError(`The ${name} process ${reason} while starting. Its last lines:\n${lines}`);
+  });
+  const host = environment.HOST === '0.0.0.0' ? '127.0.0.1' : environment.HOST;
+  const ready = Promise.all([
+    untilHealthy(`http://${host}:${environment.PORT}/api/v1/health`),
+    ...['PAYMENT_FAKE_PORT', 'SMTP_PORT', 'INBOX_PORT'].map((name) => untilListening(Number(environment[name]))),
+  ]);
+  await Promise.race([ready, died]);
+}

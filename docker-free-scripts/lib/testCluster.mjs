@@ -2,7 +2,6 @@ import { existsSync, mkdirSync, readdirSync, rmSync, writeFileSync } from 'node:
 import path from 'node:path';
 import { asSuperuser, databaseEnvironment, prepareDatabase, runServerScript } from './database.mjs';
 import { hashOf } from './hash.mjs';
-import { inRoot } from './paths.mjs';
 import { keepOrChoosePort } from './ports.mjs';
 import { cluster } from './postgres.mjs';
 import { keptState } from './secrets.mjs';
@@ -24,11 +23,11 @@ export async function up(folder, user, kind = 'migrated') {
   const port = server.runningPort() ?? server.ensure(await keepOrChoosePort(state.ports.postgres));
   save({ ports: { postgres: port } });
   register(folder, user);
-  const access = { port, superuserPassword: state.superuserPassword, passwords: state.passwords };
+  const access = { port, superuserPassword: state.superuserPassword, passwords: state.passwords, folder };
   await dropLeftovers(access);
   const templates = { migrated: await ensureTemplate(access, 'migrated') };
   if (kind === 'seeded') templates.seeded = await ensureTemplate(access, 'seeded', templates.migrated);
-  return { ...access, user, templates };
+  return { ...access, user, templates, seededFiles: filesOf(folder, templates.seeded) };
 }
 
 /** Takes `user` off the list; with nobody left the server stops (its files stay, so that the next run starts fast). */
@@ -84,10 +83,13 @@ async function dropLeftovers({ port, superuserPassword }) {
   });
 }
 
+/** The photos that belong to a seeded template; a stack that clones the database copies them. */
+const filesOf = (folder, template) => (template ? path.join(folder, 'files', template) : undefined);
+
 const templateName = (kind) => `template_${kind}_${hashOf(templateSources[kind])}`;
 
 /** A template is built under a passing name and renamed when done, so that a broken build is never cloned. */
-async function ensureTemplate({ port, superuserPassword, passwords }, kind, base) {
+async function ensureTemplate({ port, superuserPassword, passwords, folder }, kind, base) {
   const name = templateName(kind);
   const access = { port, password: superuserPassword };
   const exists = await asSuperuser(access, async (client) =>
@@ -102,7 +104,7 @@ async function ensureTemplate({ port, superuserPassword, passwords }, kind, base
   prepareDatabase({ port, superuserPassword, passwords, database: building });
   if (kind === 'seeded') {
     runServerScript('server/database/seed/main.ts', { environment: {
-      ...databaseEnvironment({ port, passwords, database: building }), NODE_ENV: 'test', STORAGE_DIR: inRoot('.trayward', 'seed-photos') } });
+      ...databaseEnvironment({ port, passwords, database: building }), NODE_ENV: 'test', TRAYWARD_MODE: 'test', STORAGE_DIR: filesOf(folder, name) } });
   }
   await asSuperuser(access, async (client) => {
     await client.query('SELECT pg_terminate_backend(pid) FROM pg_stat_activity WHERE datname = $1', [building]);

@@ -8,6 +8,8 @@ export interface TestCluster {
   port: number;
   superuserPassword: string;
   passwords: Record<string, string>;
+  /** The photos that belong to the seeded template. */
+  seededFiles?: string;
   /** The process on whose behalf the cluster runs; its databases carry this number. */
   user: number;
   templates: Partial<Record<TemplateKind, string>>;
