@@ -13,6 +13,12 @@ export interface SessionView {
   memberships: MembershipView[];
 }
 
+/** GET /me */
+export interface MeView {
+  account: { id: string; name: string; email: string };
+  memberships: MembershipView[];
+}
+
 /** POST /password-resets (always 202) */
 export interface PasswordResetRequest { email: string }
 /** POST /password-resets/:token */
