@@ -17,6 +17,9 @@ export interface BenchRow {
   mine: boolean;
 }
 
+/** GET /bench */
+export interface BenchList { items: BenchRow[] }
+
 /** POST /bench/:loanId/opening {code}: the check begins with a scan of the kit. Idempotent. */
 export interface OpenBenchRequest { code: string }
 /** POST /bench/:loanId/jars: each jar scanned or said missing */
@@ -86,5 +89,5 @@ export interface AcceptStoneRequest { reason: string }
 /** POST /bench/:loanId/stones/:stoneId/ending (admin): missing, damaged, or jars put right by hand */
 export interface EndStoneRequest { ending: 'missing' | 'damaged' | 'mixed_up'; reason: string }
 
-/** POST /verdicts/recompute/:verdictId (staff): a stored verdict computed again from what was stored with it */
+/** POST /verdicts/:verdictId/recomputation (staff): a stored verdict computed again from what was stored with it */
 export interface RecomputedVerdict { stored: VerdictResponse; again: VerdictResponse; equal: boolean }

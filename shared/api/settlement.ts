@@ -36,3 +36,6 @@ export interface SettlementStone {
 export interface SettlementRequest { items: { stoneId?: string; reason: string; amountMinor: number }[] }
 /** POST /settlements/:loanId/objection-answer (admin) */
 export interface ObjectionAnswerRequest { answer: string }
+
+/** GET /settlements */
+export interface SettlementList { items: SettlementView[] }
