@@ -17,6 +17,8 @@ export function applyDocumentStyles({ name, colors }: Theme): void {
     // The ring has two tones, so that it is seen on light, dark and coloured grounds alike.
     `:focus-visible { outline: 3px solid ${colors.action} !important; outline-offset: 2px !important; box-shadow: 0 0 0 2px ${colors.sheet} !important; }`,
     `h1:focus-visible, main:focus-visible { outline: none !important; box-shadow: none !important; }`,
+    `dialog::backdrop { background-color: ${colors.veil}; }`,
+    `label:has(input:focus-visible) { outline: 3px solid ${colors.action}; outline-offset: 2px; border-radius: 8px; }`,
     `::selection { background-color: ${colors.action}; color: ${colors.sheet}; }`,
     `@media (prefers-reduced-motion: reduce) { * { transition-duration: 0.01ms !important; animation-duration: 0.01ms !important; animation-iteration-count: 1 !important; scroll-behavior: auto !important; } }`,
     `@media (forced-colors: active) { :focus-visible { outline-color: Highlight !important; } }`,

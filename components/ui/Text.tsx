@@ -13,7 +13,7 @@ export interface TextProps {
   /** One line, cut with an ellipsis. */
   oneLine?: boolean;
   id?: string | undefined;
-  role?: 'paragraph' | 'listitem' | 'status' | 'alert';
+  role?: 'listitem' | 'status' | 'alert';
   'aria-hidden'?: boolean;
   style?: StyleProp<TextStyle>;
 }

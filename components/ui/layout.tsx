@@ -15,7 +15,7 @@ export function Stack({ gap = 'md', pad, style, ...rest }: BoxProps) {
 }
 
 interface RowProps extends BoxProps {
-  align?: 'start' | 'center' | 'baseline' | 'stretch' | 'flex-end';
+  align?: 'flex-start' | 'center' | 'baseline' | 'stretch' | 'flex-end';
   justify?: 'flex-start' | 'space-between' | 'center' | 'flex-end';
   wrap?: boolean;
 }

@@ -1,0 +1,1 @@
+export { PublicLayout as default } from '@/components/shell/layouts';

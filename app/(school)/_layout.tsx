@@ -1,0 +1,1 @@
+export { SchoolLayout as default } from '@/components/shell/layouts';

@@ -1,0 +1,10 @@
+export { ApiProvider, useApi, useSessionStore, type ApiProviderProps } from './ApiProvider';
+export { ApiClient, type QueryValues, type RequestOptions } from './client';
+export { ApiProblem, fieldError, isTransient, NoAnswer } from './problem';
+export { createQueryClient, stale } from './queryClient';
+export { SessionProvider, useRestoreSession } from './SessionProvider';
+export { SessionStore } from './sessionStore';
+export { useIdempotentMutation, type IdempotentOptions } from './useIdempotentMutation';
+export { createSchoolQueryKey, useSchoolQuery } from './useSchoolQuery';
+export { useChooseSchool, useSession, useSignInMutation, useSignOutMutation, type Session } from './useSession';
+export { problemWords } from './words';
