@@ -1,11 +1,12 @@
 import type { EntityManager } from 'typeorm';
 import { In } from 'typeorm';
 import type { Attribute, VerdictRequest, VerdictResponse } from '@shared/api/evidence';
-import { computeVerdict, engineSettings } from '@shared/evidence';
+import { computeVerdict } from '@shared/evidence';
 import { Reading } from '@/server/features/stones/reading.entity';
 import { readingInput } from '@/server/features/stones/readingInput';
 import { ReadingStrike } from '@/server/features/stones/readingStrike.entity';
 import { recordOf } from '@/server/features/stones/record';
+import { schoolEngineSettings } from '@/server/features/verdicts/engineSettings';
 import { BenchSubmission } from './benchSubmission.entity';
 import { Verdict, type VerdictBasis } from './verdict.entity';
 
@@ -30,16 +31,11 @@ export async function judge(
   const all = await countingReadings(tx, on.loanId, on.stoneId);
   const wanted = on.basis === 'pooled' ? all : all.filter(({ pass }) => pass === (on.basis === 'first' ? 1 : 2));
   const request: VerdictRequest = { recorded, readings: wanted.map(({ reading }) => readingInput(reading)), unavailable: [...on.unavailable] };
-  const settings = engineSettings(await schoolSettings(tx));
+  const settings = await schoolEngineSettings(tx);
   const result = computeVerdict(request, settings);
   await tx.createQueryBuilder().insert().into(Verdict).values({
     schoolId: on.schoolId, loanId: on.loanId, stoneId: on.stoneId, basis: on.basis,
     verdict: result.verdict, log10Lr: result.log10LR, engine: result.engine, settings, request, result, computedAt: on.now,
   }).updateEntity(false).execute();
   return result;
-}
-
-async function schoolSettings(tx: EntityManager): Promise<unknown> {
-  const [row] = await tx.query<{ engine_settings: unknown }[]>('SELECT engine_settings FROM school WHERE id = current_school()');
-  return row?.engine_settings ?? {};
 }

@@ -1,7 +1,7 @@
 import { isDeepStrictEqual } from 'node:util';
 import type { EntityManager } from 'typeorm';
 import type { RecomputedVerdict } from '@shared/api/bench';
-import { computeVerdict, engineSettings } from '@shared/evidence';
+import { computeVerdict } from '@shared/evidence';
 import { notFound } from '@/server/http/problem';
 import { benchLoanFor } from './access';
 import { Verdict } from './verdict.entity';
@@ -11,7 +11,7 @@ export async function recomputeVerdict(tx: EntityManager, verdictId: string, acc
   const verdict = await tx.findOneBy(Verdict, { id: verdictId });
   if (verdict === null) throw notFound('There is no such verdict in this school. Open the stone at the bench and pick one of its verdicts.');
   await benchLoanFor(tx, verdict.loanId, accountId);
-  const again = computeVerdict(verdict.request, engineSettings(verdict.settings));
+  const again = computeVerdict(verdict.request, verdict.settings);
   // Through JSON, as the stored one went: an absent field and an undefined one are the same there.
   const plain = JSON.parse(JSON.stringify(again)) as typeof again;
   return { stored: verdict.result, again, equal: isDeepStrictEqual(plain, verdict.result) };

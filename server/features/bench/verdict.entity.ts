@@ -1,4 +1,5 @@
 import { Column, Entity, PrimaryColumn } from 'typeorm';
+import type { EngineSettings } from '@shared/evidence';
 import type { VerdictRequest, VerdictResponse, VerdictWord } from '@shared/api/evidence';
 
 export type VerdictBasis = 'first' | 'second' | 'pooled';
@@ -32,7 +33,7 @@ export class Verdict {
 
   /** The engine settings in full, defaults included. */
   @Column({ type: 'jsonb' })
-  settings: object;
+  settings: EngineSettings;
 
   @Column({ type: 'jsonb' })
   request: VerdictRequest;

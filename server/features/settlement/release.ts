@@ -1,6 +1,6 @@
 import type { EntityManager } from 'typeorm';
 import { recordCustody } from '@/server/features/custody/custody.service';
-import { settleDeposit } from '@/server/features/deposits/settleDeposit';
+import { settleDeposit } from '@/server/features/deposits/settle';
 import type { Loan } from '@/server/features/loans/loan.entity';
 import { moveLoan } from '@/server/features/loans/loanState';
 import { backOnShelf } from '@/server/features/kits/standing';

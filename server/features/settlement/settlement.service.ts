@@ -4,7 +4,7 @@ import { formatMoney } from '@shared/money';
 import { dayMs } from '@shared/lending';
 import { forbidden, invalid, notFound, refused } from '@/server/http/problem';
 import { recordCustody } from '@/server/features/custody/custody.service';
-import { settleDeposit } from '@/server/features/deposits/settleDeposit';
+import { settleDeposit } from '@/server/features/deposits/settle';
 import { backOnShelf } from '@/server/features/kits/standing';
 import { lockLoan, moveLoan } from '@/server/features/loans/loanState';
 import type { Loan } from '@/server/features/loans/loan.entity';
