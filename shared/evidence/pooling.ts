@@ -1,0 +1,145 @@
+import type { NumericAttribute, NumberReading, OverLimitReading, ReadingInput, WeighingReading } from '../api/evidence';
+import { specificGravity } from '../gem/hydrostatic';
+import { EXPONENT_FLOOR } from './normal';
+import type { EngineSettings } from './settings';
+
+/** One number as read, with the part of its uncertainty that belongs to the instrument. */
+export interface NumberRead {
+  readonly value: number;
+  readonly u: number;
+  readonly uInstrument: number;
+  readonly instrument: string | null;
+  readonly damaged: boolean;
+}
+
+/**
+ * One way to explain an attribute's readings: which of them are blunders (`blunders` of them), and what the others say
+ * together. `weight` holds the blunder odds, the flat densities of the blunders and how well the others agree with each
+ * other; what depends on the stone's true value is left to `mean` and `variance` (absent where every reading is a blunder).
+ */
+export interface Variant {
+  readonly blunders: number;
+  readonly weight: number;
+  readonly sound: { readonly mean: number; readonly variance: number; readonly instrumentVariance: number } | null;
+}
+
+/** All readings of one numeric attribute. Densities are in units of `scale`, so that none overflows however fine the instrument. */
+export interface PooledNumber {
+  readonly attribute: NumericAttribute;
+  readonly reads: readonly NumberRead[];
+  readonly over: readonly OverLimitReading[];
+  readonly mean: number;
+  readonly u: number;
+  readonly instrument: string | null;
+  readonly uInstrument: number;
+  readonly damaged: boolean;
+  readonly scale: number;
+  readonly variants: readonly Variant[];
+}
+
+/** At most two blunders are considered at once: three slips on one stone are a matter for people. */
+export const MAX_BLUNDERS = 2;
+/** With more repeats than this only the outlying ones are suspected, or the patterns would outgrow the bench. */
+const MAX_SUSPECTS = 8;
+
+/** The number a reading stands for; SG weighings are turned into SG. */
+export function toNumberRead(reading: NumberReading | WeighingReading, settings: EngineSettings): NumberRead {
+  const { value, u } = 'airCt' in reading ? specificGravity(reading) : reading;
+  return {
+    value,
+    u,
+    uInstrument: Math.min(reading.uInstrument ?? settings.instrumentShare * u, 0.999 * u),
+    instrument: reading.instrument ?? null,
+    damaged: reading.explained === 'damage',
+  };
+}
+
+/** Gathers the readings of one numeric attribute; `blunderDensity` is the flat density of a blundered number, per unit. */
+export function poolNumbers(
+  attribute: NumericAttribute, readings: readonly ReadingInput[], settings: EngineSettings, blunderDensity: number,
+): PooledNumber {
+  const reads: NumberRead[] = [];
+  const over: OverLimitReading[] = [];
+  for (const reading of readings) {
+    if ('airCt' in reading) reads.push(toNumberRead(reading, settings));
+    else if (reading.value === 'over_limit') over.push(reading);
+    else if (typeof reading.value === 'number') reads.push(toNumberRead(reading as NumberReading, settings));
+  }
+  // Sums run in one order whatever order the readings came in, so that the digits do not depend on it.
+  reads.sort((a, b) => a.value - b.value || a.u - b.u);
+  const scale = reads.reduce((largest, read) => Math.max(largest, read.u), 0);
+  const all = combine(reads);
+  const rate = settings.blunderRate;
+  return {
+    attribute, reads, over, scale,
+    mean: all.mean,
+    u: Math.sqrt(all.variance),
+    instrument: sharedInstrument(reads),
+    uInstrument: Math.sqrt(all.instrumentVariance),
+    damaged: reads.some((read) => read.damaged),
+    variants: reads.length === 0 ? [] : variantsOf(reads, scale, rate, rate * blunderDensity * scale),
+  };
+}
+
+function sharedInstrument(reads: readonly NumberRead[]): string | null {
+  const first = reads[0]?.instrument ?? null;
+  return reads.every((read) => read.instrument === first) ? first : null;
+}
+
+function variantsOf(reads: readonly NumberRead[], scale: number, rate: number, blundered: number): Variant[] {
+  const suspects = suspectIndices(reads);
+  const patterns: number[][] = [[]];
+  suspects.forEach((a, i) => {
+    patterns.push([a]);
+    for (const b of suspects.slice(i + 1)) patterns.push([a, b]);
+  });
+  return patterns.map((pattern) => {
+    const rest = reads.filter((_, i) => !pattern.includes(i));
+    const weight = blundered ** pattern.length * (1 - rate) ** rest.length;
+    if (rest.length === 0) return { blunders: pattern.length, weight, sound: null };
+    const { mean, variance, instrumentVariance, agreement } = combine(rest, scale);
+    return { blunders: pattern.length, weight: weight * agreement, sound: { mean, variance, instrumentVariance } };
+  });
+}
+
+function suspectIndices(reads: readonly NumberRead[]): number[] {
+  const indices = reads.map((_, i) => i);
+  if (reads.length <= MAX_SUSPECTS) return indices;
+  const median = reads[reads.length >> 1]?.value ?? 0;
+  const distance = (i: number) => Math.abs((reads[i]?.value ?? 0) - median) / (reads[i]?.u ?? 1);
+  return indices.sort((a, b) => distance(b) - distance(a)).slice(0, MAX_SUSPECTS).sort((a, b) => a - b);
+}
+
+/**
+ * Weighted mean of repeated readings. Their own scatter shrinks with their number; the instrument's part does not.
+ * `agreement` is the density of their scatter about the mean, in units of `scale`.
+ */
+function combine(reads: readonly NumberRead[], scale = 1) {
+  let precision = 0;
+  let weighted = 0;
+  let instrumentVariance = 0;
+  const own = reads.map((read) => Math.max(read.u * read.u - read.uInstrument * read.uInstrument, 1e-6 * read.u * read.u));
+  reads.forEach((read, i) => {
+    const w = 1 / (own[i] ?? 1);
+    precision += w;
+    weighted += w * read.value;
+    instrumentVariance += read.uInstrument * read.uInstrument;
+  });
+  const mean = weighted / precision;
+  instrumentVariance /= Math.max(reads.length, 1) * countInstruments(reads);
+  let exponent = 0;
+  let logNorm = -0.5 * Math.log(precision);
+  reads.forEach((read, i) => {
+    const variance = own[i] ?? 1;
+    exponent -= (0.5 * (read.value - mean) ** 2) / variance;
+    logNorm -= 0.5 * Math.log(variance / (scale * scale));
+  });
+  logNorm += -0.5 * (reads.length - 1) * Math.log(2 * Math.PI) - Math.log(scale);
+  const agreement = reads.length < 2 ? 1 : Math.exp(Math.max(exponent, EXPONENT_FLOOR) + logNorm);
+  return { mean, variance: instrumentVariance + 1 / precision, instrumentVariance, agreement };
+}
+
+/** Readings that name different instruments do not share one offset; unnamed ones are taken to come from one. */
+function countInstruments(reads: readonly NumberRead[]): number {
+  return Math.max(new Set(reads.map((read) => read.instrument)).size, 1);
+}
