@@ -72,13 +72,22 @@ export function readConfig(env: Environment): Config {
     stripe: {
       secretKey: read.secret('STRIPE_SECRET_KEY', mode, 8),
       webhookSecret: read.secret('STRIPE_WEBHOOK_SECRET', mode, 8),
-      apiBase: read.optional('STRIPE_API_BASE'),
+      apiBase: read.address('STRIPE_API_BASE'),
     },
     mail: { smtpUrl: read.text('SMTP_URL', undefined), from: read.text('MAIL_FROM', mode === 'production' ? undefined : 'Trayward <desk@trayward.example>') },
   };
   if (mode === 'production' && config.stripe.apiBase !== undefined) read.fault('STRIPE_API_BASE points at the payment fake and must be empty in production');
   read.finish();
   return config;
+}
+
+/** The payment settings as the payment port takes them: the fake's address in parts, or none for the real service. */
+export function paymentSettings({ stripe }: Config): { secretKey: string; webhookSecret: string; apiBase?: { host: string; port: number; protocol: 'http' | 'https' } } {
+  const { secretKey, webhookSecret, apiBase } = stripe;
+  if (apiBase === undefined) return { secretKey, webhookSecret };
+  const url = new URL(apiBase);
+  const protocol = url.protocol === 'https:' ? 'https' : 'http';
+  return { secretKey, webhookSecret, apiBase: { host: url.hostname, port: Number(url.port || (protocol === 'https' ? 443 : 80)), protocol } };
 }
 
 /** Reads single variables and collects what is wrong with them. */
@@ -127,6 +136,12 @@ class Reader {
     const value = this.text(name, fallback).replace(/\/+$/, '');
     if (value === '') return value;
     if (!URL.canParse(value) || new URL(value).origin !== value) this.fault(`${name} must be an origin such as https://lend.example.org`);
+    return value;
+  }
+
+  address(name: string): string | undefined {
+    const value = this.optional(name);
+    if (value !== undefined && !URL.canParse(value)) this.fault(`${name} must be an address such as http://127.0.0.1:8090`);
     return value;
   }
 
