@@ -1,4 +1,4 @@
-import { ConfigError, readConfig } from '@/server/config';
+import { ConfigError, paymentSettings, readConfig } from '@/server/config';
 import { openDatabase } from '@/server/database/data-source';
 import { createLogger } from '@/server/http/logging';
 import { createSmtpMail } from '@/server/mail/smtpMail';
@@ -17,7 +17,7 @@ async function main(): Promise<void> {
   const healthPort = wholeNumber('WORKER_PORT', 0, 65_535);
   const db = await openDatabase({ url: config.database.url, poolSize: concurrency + 2, applicationName: 'trayward-jobs' });
   const mail = createSmtpMail(config.mail);
-  const payments = createPaymentPort({ secretKey: config.stripe.secretKey, webhookSecret: config.stripe.webhookSecret, ...apiBase(config.stripe.apiBase) });
+  const payments = createPaymentPort(paymentSettings(config));
   const runner = await startRunner({
     queueUrl: config.database.queueUrl,
     concurrency,
@@ -45,13 +45,6 @@ function wholeNumber(name: string, fallback: number, max: number): number {
   const value = Number(given);
   if (Number.isInteger(value) && value >= 1 && value <= max) return value;
   throw new ConfigError([`${name} must be a whole number from 1 to ${max}`]);
-}
-
-function apiBase(address: string | undefined): { apiBase?: { host: string; port: number; protocol: 'http' | 'https' } } {
-  if (address === undefined) return {};
-  const url = new URL(address);
-  const protocol = url.protocol === 'https:' ? 'https' : 'http';
-  return { apiBase: { host: url.hostname, port: Number(url.port || (protocol === 'https' ? 443 : 80)), protocol } };
 }
 
 main().catch((error: unknown) => {

@@ -19,5 +19,3 @@ export interface StoredFile {
 export class FileNotFound extends Error {
   override readonly name = 'FileNotFound';
 }
-
-export type { StoragePort as Storage };

@@ -8,7 +8,7 @@ import { assertSafeKey } from './storageKey';
 const mimeOfEnding: Readonly<Record<string, string>> = { webp: 'image/webp', jpg: 'image/jpeg', png: 'image/png', pdf: 'application/pdf' };
 
 /** Keeps files under one folder, readable by the server's own user only. The media type follows from the key's ending. */
-export function createLocalDisk(folder: string): StoragePort {
+export function createFolderStorage(folder: string): StoragePort {
   const root = path.resolve(folder);
   const place = (key: string): string => {
     assertSafeKey(key);

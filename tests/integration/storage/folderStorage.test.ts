@@ -2,7 +2,7 @@ import { mkdtemp, readdir, rm, stat } from 'node:fs/promises';
 import { tmpdir } from 'node:os';
 import path from 'node:path';
 import { buffer } from 'node:stream/consumers';
-import { createLocalDisk } from '@/server/storage/localDisk';
+import { createFolderStorage } from '@/server/storage/folderStorage';
 import { FileNotFound, type StoragePort } from '@/server/storage/storage.port';
 import { storageKey, thumbnailKey } from '@/server/storage/storageKey';
 
@@ -12,7 +12,7 @@ const schoolId = '3f0e8a52-6b0c-4a53-9a27-2d0c1a4f6e11';
 
 beforeEach(async () => {
   folder = await mkdtemp(path.join(tmpdir(), 'trayward-storage-'));
-  storage = createLocalDisk(folder);
+  storage = createFolderStorage(folder);
 });
 afterEach(() => rm(folder, { recursive: true, force: true }));
 
