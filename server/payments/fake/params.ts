@@ -57,7 +57,7 @@ export function flag(params: Params, name: string, param = name): boolean | unde
   return value === 'true';
 }
 
-export function oneOf<T extends string>(params: Params, name: string, allowed: readonly T[], param = name): T | undefined {
+export function oneOf<const T extends string>(params: Params, name: string, allowed: readonly T[], param = name): T | undefined {
   const value = text(params, name, param);
   if (value === undefined) return undefined;
   const found = allowed.find((candidate) => candidate === value);
