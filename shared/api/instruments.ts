@@ -1,5 +1,25 @@
+import type { Attribute } from './evidence';
+
 export const INSTRUMENT_KINDS = ['balance', 'refractometer', 'caliper', 'polariscope', 'uv_lamp', 'thermometer'] as const;
 export type InstrumentKind = (typeof INSTRUMENT_KINDS)[number];
+
+/** The kind of instrument an attribute is read with; null where the register knows no such kind. */
+export const INSTRUMENT_FOR: Readonly<Record<Attribute, InstrumentKind | null>> = {
+  length_mm: 'caliper',
+  width_mm: 'caliper',
+  height_mm: 'caliper',
+  sg: 'balance',
+  weight_ct: 'balance',
+  ri_spot: 'refractometer',
+  ri_low: 'refractometer',
+  ri_high: 'refractometer',
+  polariscope: 'polariscope',
+  optic_figure: 'polariscope',
+  optic_sign: 'polariscope',
+  uv_long: 'uv_lamp',
+  uv_short: 'uv_lamp',
+  pleochroism: null,
+};
 
 /** GET /instruments. Units: ct for a balance, mm for a caliper, refractive index for a refractometer, °C for a thermometer; null where the kind has no number. */
 export interface InstrumentView {

@@ -1,6 +1,7 @@
 import { randomUUID } from 'node:crypto';
 import type { EntityManager } from 'typeorm';
 import { type Attribute, ATTRIBUTES } from '@shared/api/evidence';
+import { INSTRUMENT_FOR } from '@shared/api/instruments';
 import type { ReadingEntry } from '@shared/api/kits';
 import { forbidden, notFound, refused } from '@/server/http/problem';
 import { recordCustody } from '@/server/features/custody/custody.service';
@@ -100,18 +101,12 @@ function passFor(stone: BenchStoneRow, accountId: string): 1 | 2 {
 const isFirstEntry = (stone: BenchStoneRow, accountId: string): boolean =>
   stone.firstReaderId !== accountId && stone.secondReaderId !== accountId;
 
-const kindOf: Partial<Record<Attribute, string>> = {
-  weight_ct: 'balance', sg: 'balance', length_mm: 'caliper', width_mm: 'caliper', height_mm: 'caliper',
-  ri_spot: 'refractometer', ri_low: 'refractometer', ri_high: 'refractometer',
-  polariscope: 'polariscope', optic_figure: 'polariscope', optic_sign: 'polariscope', uv_long: 'uv_lamp', uv_short: 'uv_lamp',
-};
-
 /** Attributes for which the school has no working instrument: never proposed as the next reading. */
 export async function unavailableAttributes(tx: EntityManager): Promise<Attribute[]> {
   const rows = await tx.query<{ kind: string }[]>('SELECT DISTINCT kind FROM instrument WHERE retired_at IS NULL');
   const kinds = new Set(rows.map((row) => row.kind));
   return ATTRIBUTES.filter((attribute) => {
-    const kind = kindOf[attribute];
-    return kind !== undefined && !kinds.has(kind);
+    const kind = INSTRUMENT_FOR[attribute];
+    return kind !== null && !kinds.has(kind);
   });
 }

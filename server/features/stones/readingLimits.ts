@@ -1,23 +1,6 @@
-import type { Attribute, NumericAttribute } from '@shared/api/evidence';
-import type { InstrumentKind } from '@shared/api/instruments';
+import type { NumericAttribute } from '@shared/api/evidence';
 
-/** The instrument an attribute is read with; null where the register knows no such kind. */
-export const INSTRUMENT_FOR: Readonly<Record<Attribute, InstrumentKind | null>> = {
-  length_mm: 'caliper',
-  width_mm: 'caliper',
-  height_mm: 'caliper',
-  sg: 'balance',
-  weight_ct: 'balance',
-  ri_spot: 'refractometer',
-  ri_low: 'refractometer',
-  ri_high: 'refractometer',
-  polariscope: 'polariscope',
-  optic_figure: 'polariscope',
-  optic_sign: 'polariscope',
-  uv_long: 'uv_lamp',
-  uv_short: 'uv_lamp',
-  pleochroism: null,
-};
+export { INSTRUMENT_FOR } from '@shared/api/instruments';
 
 interface Limits { readonly min: number; readonly max: number; readonly unit: string; readonly what: string }
 
