@@ -1,3 +1,4 @@
 export * from './money';
 export * from './postings';
 export * from './balances';
+export * from './words';

@@ -31,7 +31,7 @@ export async function openDeposit(work: PaymentWork, asked: Asked): Promise<Repl
   const now = work.now();
   const first = await withSchool(work.db, asked.actor, async (tx) => {
     const before = asked.idempotency === undefined ? undefined : await claimKey(tx, asked.idempotency);
-    if (before !== undefined && before !== 'unfinished') return { replay: reply(before.status, before.body as OpenPaymentView) };
+    if (before !== undefined && before !== 'unfinished') return { replay: reply(before.status, before.body as OpenPaymentView, { headers: { 'Idempotency-Hit': 'true' } }) };
     return { prepared: await prepare(tx, asked, now) };
   });
   if (first.replay !== undefined) return first.replay;
