@@ -3,4 +3,4 @@ export { useBreakpoints, useMediaQuery, useReducedMotion, type Breadth, type Bre
 export { type SchemeChoice } from './schemeChoice';
 export { ThemeProvider, useTheme, type ThemeContext } from './ThemeProvider';
 export { type Colors, type SchemeName } from './themes';
-export { family, motion, radius, size, space, type Space, type TypeSize } from './tokens';
+export { family, motion, radius, size, space, type, type Space, type TypeSize } from './tokens';
