@@ -9,6 +9,8 @@ import { Label } from '@/server/features/labels/label.entity';
 import { Loan, LoanStone } from '@/server/features/loans/loan.entity';
 import { Objection } from '@/server/features/loans/objection.entity';
 import { Photo } from '@/server/features/photos/photo.entity';
+import { School } from '@/server/features/school/school.entity';
+import { TermsVersion } from '@/server/features/school/termsVersion.entity';
 import { Settlement } from '@/server/features/settlement/settlement.entity';
 import { SettlementItem } from '@/server/features/settlement/settlementItem.entity';
 import { Reading } from '@/server/features/stones/reading.entity';
@@ -37,6 +39,8 @@ export const entities: (new () => object)[] = [
   Loan,
   LoanStone,
   Objection,
+  School,
+  TermsVersion,
   LedgerAccount,
   LedgerPosting,
   LedgerTransfer,

@@ -1,5 +1,6 @@
 import { MulterError } from 'multer';
 import { QueryFailedError } from 'typeorm';
+import { PaymentServiceUnavailable } from '@/server/payments/payments.errors';
 import { BadRequest, Invalid, NotFound, Problem, Refused, Unavailable } from './problem';
 
 /** What is known of a driver's error without reading its message, which may repeat a person's data. */
@@ -30,6 +31,9 @@ export function toProblem(error: unknown): Problem | undefined {
   if (error instanceof Problem) return error;
   const fault = databaseFault(error);
   if (fault) return fromDatabase(fault);
+  if (error instanceof PaymentServiceUnavailable) {
+    return new Unavailable('payments_away', 'The payment service does not answer just now. Nothing is paid twice: try again in a moment.');
+  }
   if (error instanceof MulterError) return fromUpload(error);
   if (error instanceof URIError) return new BadRequest('bad_address', 'The address is not readable. Check it and try again.');
   return fromBodyParser(error);
