@@ -85,6 +85,7 @@ export interface ReadingView {
   struck: { reason: string; by: PersonRef; at: string } | null;
 }
 
+/** POST /stones/:stoneId/photos (multipart: the file as `photo`, a `note`); GET and DELETE /photos/:photoId; GET /photos/:photoId/thumbnail (staff) */
 export interface PhotoView { id: string; url: string; thumbnailUrl: string; width: number; height: number; note: string; createdAt: string }
 
 /** POST /kits */
@@ -123,7 +124,7 @@ export interface ReadingEntry {
   instrumentId?: string;
   note?: string;
 }
-/** POST /stones/:stoneId/readings (intake) */
+/** POST /stones/:stoneId/readings (intake). Idempotent. */
 export interface IntakeReadingsRequest { readings: ReadingEntry[] }
 /** POST /readings/:readingId/strike */
 export interface StrikeRequest { reason: string }

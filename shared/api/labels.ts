@@ -3,7 +3,7 @@ export const SHEET_SIZES = ['small', 'medium', 'large'] as const;
 export type SheetPage = (typeof SHEET_PAGES)[number];
 export type SheetSize = (typeof SHEET_SIZES)[number];
 
-/** POST /labels: new labels for the kit and all its jars, or for those named; earlier ones become void */
+/** POST /labels: new labels for the kit and all its jars, or for those named; earlier ones become void. Idempotent. */
 export interface IssueLabelsRequest { kitId: string; stoneIds?: string[]; includeKit?: boolean }
 export interface IssuedLabel { id: string; code: string; kitNumber: string; slot: string | null }
 export interface IssuedLabels { labels: IssuedLabel[]; voidedCount: number }

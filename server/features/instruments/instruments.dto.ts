@@ -1,6 +1,6 @@
 import { IsBoolean, IsIn, IsInt, IsNumber, IsOptional, IsPositive, IsString, Length, Min } from 'class-validator';
 import { INSTRUMENT_KINDS, type InstrumentChange, type InstrumentKind, type NewInstrumentRequest } from '@shared/api/instruments';
-import { Optional } from '@/server/http/optional';
+import { IfSent } from '@/server/http/decorators';
 
 export class NewInstrumentDto implements NewInstrumentRequest {
   @IsIn(INSTRUMENT_KINDS)
@@ -26,7 +26,7 @@ export class InstrumentChangeDto implements InstrumentChange {
   @IsInt() @Min(1)
   version: number;
 
-  @Optional() @IsString() @Length(1, 80)
+  @IfSent() @IsString() @Length(1, 80)
   name?: string;
 
   @IsOptional() @IsNumber() @IsPositive()
@@ -41,6 +41,6 @@ export class InstrumentChangeDto implements InstrumentChange {
   @IsOptional() @IsNumber() @IsPositive()
   liquidLimitRi?: number | null;
 
-  @Optional() @IsBoolean()
+  @IfSent() @IsBoolean()
   retired?: boolean;
 }

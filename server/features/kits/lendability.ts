@@ -1,6 +1,7 @@
 import type { EntityManager } from 'typeorm';
-import { recordsOf } from '@/server/features/stones/record';
-import { Stone } from '@/server/features/stones/stone.entity';
+import { recordsOf, type StoneRecord } from '@/server/features/stones/record';
+import { stonesOfKits } from '@/server/features/stones/stones.queries';
+import type { Stone } from '@/server/features/stones/stone.entity';
 import { Kit } from './kit.entity';
 
 export interface Lendability {
@@ -14,18 +15,12 @@ export interface Lendability {
  * enough for a verdict. Whether somebody has it already is the loan's question, not asked here.
  */
 export async function lendability(tx: EntityManager, kitId: string): Promise<Lendability> {
-  const [kit, stones] = [await tx.findOneBy(Kit, { id: kitId }), await stonesInUse(tx, kitId)];
+  const kit = await tx.findOneBy(Kit, { id: kitId });
   if (kit === null) return { lendable: false, reasons: ['This kit is not in the catalogue.'] };
-  const reasons = [...standingReasons(kit), ...stoneReasons(stones)];
-  const records = await recordsOf(tx, stones.map(({ id }) => id));
-  for (const { id, slot } of stones) {
-    for (const gap of records.get(id)?.gaps ?? []) reasons.push(`Stone ${slot}: ${gap.message}`);
-  }
+  const stones = await stonesOfKits(tx, [kitId]);
+  const records = await recordsOf(tx, stones);
+  const reasons = [...standingReasons(kit), ...kitGaps(stones, records)];
   return { lendable: reasons.length === 0, reasons };
-}
-
-function stonesInUse(tx: EntityManager, kitId: string): Promise<Stone[]> {
-  return tx.createQueryBuilder(Stone, 'stone').where('stone.kitId = :kitId', { kitId }).andWhere("stone.standing <> 'retired'").orderBy('stone.slot').getMany();
 }
 
 function standingReasons({ standing, number }: Kit): string[] {
@@ -35,7 +30,11 @@ function standingReasons({ standing, number }: Kit): string[] {
 
 const awayWords = { missing: 'is missing', damaged: 'is damaged', different: 'was found to be another stone', retired: 'is retired' } as const;
 
-function stoneReasons(stones: readonly Stone[]): string[] {
+/** What a kit lacks before it can go out, whatever its standing; `stones` are those not retired. */
+export function kitGaps(stones: readonly Stone[], records: ReadonlyMap<string, StoneRecord>): string[] {
   if (stones.length === 0) return ['The kit has no stones yet. Add the first one.'];
-  return stones.flatMap(({ slot, standing }) => (standing === 'in_kit' ? [] : [`Stone ${slot} ${awayWords[standing]}. Repair or replace it, or retire it.`]));
+  return stones.flatMap(({ id, slot, standing }) => {
+    const away = standing === 'in_kit' ? [] : [`Stone ${slot} ${awayWords[standing]}. Repair or replace it, or retire it.`];
+    return [...away, ...(records.get(id)?.gaps ?? []).map((gap) => `Stone ${slot}: ${gap.message}`)];
+  });
 }

@@ -2,35 +2,35 @@ import { Type } from 'class-transformer';
 import { ArrayMaxSize, ArrayMinSize, IsArray, IsBoolean, IsIn, IsNumber, IsString, IsUUID, MaxLength, MinLength, ValidateNested } from 'class-validator';
 import { ATTRIBUTES, CATEGORY_VALUES, type Attribute, type CategoryValue } from '@shared/api/evidence';
 import type { IntakeReadingsRequest, ReadingEntry, StrikeRequest } from '@shared/api/kits';
-import { Optional } from '@/server/http/optional';
+import { IfSent } from '@/server/http/decorators';
 
 /** One reading as entered, at intake and at the bench. What fits its attribute and instrument is checked by `toReadingRow`. */
 export class ReadingEntryDto implements ReadingEntry {
   @IsIn(ATTRIBUTES)
   attribute: Attribute;
 
-  @Optional() @IsNumber()
+  @IfSent() @IsNumber()
   value?: number;
 
-  @Optional() @IsIn([...new Set(Object.values(CATEGORY_VALUES).flat())])
+  @IfSent() @IsIn([...new Set(Object.values(CATEGORY_VALUES).flat())])
   category?: CategoryValue;
 
-  @Optional() @IsBoolean()
+  @IfSent() @IsBoolean()
   overLimit?: boolean;
 
-  @Optional() @IsNumber()
+  @IfSent() @IsNumber()
   airCt?: number;
 
-  @Optional() @IsNumber()
+  @IfSent() @IsNumber()
   waterCt?: number;
 
-  @Optional() @IsNumber()
+  @IfSent() @IsNumber()
   waterC?: number;
 
-  @Optional() @IsUUID()
+  @IfSent() @IsUUID()
   instrumentId?: string;
 
-  @Optional() @IsString() @MaxLength(300)
+  @IfSent() @IsString() @MaxLength(300)
   note?: string;
 }
 

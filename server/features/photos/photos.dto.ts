@@ -1,0 +1,8 @@
+import { IsString, MaxLength } from 'class-validator';
+import { IfSent } from '@/server/http/decorators';
+
+/** The fields of the form beside the picture, which is sent as `photo`. */
+export class PhotoFormDto {
+  @IfSent() @IsString() @MaxLength(200)
+  note?: string;
+}
