@@ -104,8 +104,10 @@ export class Money1764547200004 implements MigrationInterface {
 
       CREATE FUNCTION check_transfer_balance() RETURNS trigger LANGUAGE plpgsql SECURITY DEFINER SET search_path = public AS $$
       DECLARE
-        transfer uuid := CASE TG_TABLE_NAME WHEN 'ledger_transfer' THEN NEW.id ELSE NEW.transfer_id END;
+        transfer uuid;
       BEGIN
+        -- Two statements, because one expression would need both columns of whichever row this is.
+        IF TG_TABLE_NAME = 'ledger_transfer' THEN transfer := NEW.id; ELSE transfer := NEW.transfer_id; END IF;
         IF (SELECT count(*) < 2 FROM ledger_posting WHERE transfer_id = transfer) THEN
           RAISE EXCEPTION 'ledger transfer % has fewer than two postings', transfer USING ERRCODE = 'check_violation';
         END IF;
