@@ -1,0 +1,1 @@
+export { BenchCheckScreen as default } from '@/components/bench/BenchCheckScreen';

@@ -1,0 +1,1 @@
+export { BenchListScreen as default } from '@/components/bench/BenchListScreen';
