@@ -28,14 +28,17 @@ export async function runDemo({ folder, port, host }) {
   void asked.then(() => breakOff.abort());
   let exitCode = 0;
   try {
-    await Promise.race([asked, start({ folder, port, host, state, save, database, processes, signal: breakOff.signal })]);
+    const starting = start({ folder, port, host, state, save, database, processes, signal: breakOff.signal });
+    starting.catch(() => undefined); // when asked to stop, how the rest of the start ends matters to nobody
+    await Promise.race([asked, starting]);
     const end = await Promise.race([asked, processes.death]);
-    if (end?.name) {
+    if (end.name) {
       say(`\nThe ${end.name} process ${end.reason}; everything is stopped. Its last lines:\n${end.lines}`);
       exitCode = 1;
+    } else {
+      say('\nStopping …');
     }
   } finally {
-    say('Stopping …');
     await processes.stop();
     database.stop();
     leave();
@@ -44,9 +47,9 @@ export async function runDemo({ folder, port, host }) {
 }
 
 async function start({ folder, port, host, state, save, database, processes, signal }) {
+  const ports = await preparePorts({ port, state, save, database });
   const webExport = ensureWebExport({ signal });
   webExport.catch(() => undefined); // awaited below; must not count as unhandled while the database is being prepared
-  const ports = await preparePorts({ port, state, save, database });
   prepareDatabase({ port: ports.postgres, superuserPassword: state.superuserPassword, passwords: state.passwords });
   const shared = { mode: 'demo', state, ports, folder, host, publicUrl: process.env.PUBLIC_URL };
   mkdirSync(path.join(folder, 'files'), { recursive: true });

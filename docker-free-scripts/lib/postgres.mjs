@@ -20,10 +20,10 @@ function asServerUser(command, args) {
   return spawnSync(file, rest, { cwd: '/', encoding: 'utf8', stdio: ['ignore', 'pipe', 'pipe'] });
 }
 
-function must(result, what, hint = '') {
+function must(result, what) {
   if (result.status === 0) return result;
-  const detail = `${result.stderr ?? ''}${result.stdout ?? ''}`.trim() || result.error?.message || 'no message';
-  throw new PlainError(`${what}: ${detail}${hint}`);
+  const detail = `${result.stderr ?? ''}${result.stdout ?? ''}`.trim() || result.error?.message;
+  throw new PlainError(detail ? `${what}: ${detail}` : what);
 }
 
 function serverUserIds() {
@@ -56,8 +56,8 @@ export function cluster({ folder, superuserPassword, settings = {} }) {
     if (existsSync(path.join(data, 'PG_VERSION'))) return;
     mkdirSync(folder, { recursive: true, mode: 0o700 });
     giveToServerUser(folder);
-    must(asServerUser('test', ['-w', folder, '-a', '-x', folder]), `The postgres user cannot enter ${folder}`,
-      'choose another folder with TRAYWARD_DATA');
+    must(asServerUser('test', ['-w', folder, '-a', '-x', folder]),
+      `The postgres user may not enter ${folder}. Choose another data folder with TRAYWARD_DATA.`);
     // Built aside and moved into place whole: a start that is killed half-way must not leave half a cluster behind.
     const fresh = path.join(folder, 'data.new');
     const passwordFile = path.join(folder, 'superuser.tmp');

@@ -1,0 +1,5 @@
+export { openBrowser, openPage, screenshot, sizes, type PageOptions } from './browser';
+export { makeCameraFeed, type LabelPicture } from './camera';
+export { readInbox, waitForMail } from './inbox';
+export { paymentFakeControl } from './paymentFake';
+export { startStack, type ProcessName, type Stack, type StackOptions } from './stack';
