@@ -1,7 +1,7 @@
 import { existsSync, mkdirSync, readFileSync, rmSync, writeFileSync } from 'node:fs';
 import path from 'node:path';
 import { children } from './children.mjs';
-import { prepareDatabase, runServerScript } from './database.mjs';
+import { databaseEnvironment, prepareDatabase, runServerScript } from './database.mjs';
 import { keepOrChoosePort, portIsFree } from './ports.mjs';
 import { cluster } from './postgres.mjs';
 import { PlainError, say } from './say.mjs';
@@ -50,12 +50,12 @@ async function start({ folder, port, host, state, save, database, processes, sig
   const ports = await preparePorts({ port, state, save, database });
   const webExport = ensureWebExport({ signal });
   webExport.catch(() => undefined); // awaited below; must not count as unhandled while the database is being prepared
-  prepareDatabase({ port: ports.postgres, superuserPassword: state.superuserPassword, passwords: state.passwords });
-  const shared = { mode: 'demo', state, ports, folder, host, publicUrl: process.env.PUBLIC_URL };
+  const access = { port: ports.postgres, passwords: state.passwords };
+  prepareDatabase({ ...access, superuserPassword: state.superuserPassword });
   mkdirSync(path.join(folder, 'files'), { recursive: true });
-  runServerScript('server/database/seed/main.ts', { environment: stackEnvironment({ ...shared, webFolder: '' }) });
+  runServerScript('server/database/seed/main.ts', { environment: { ...databaseEnvironment(access), TRAYWARD_MODE: 'demo', STORAGE_DIR: path.join(folder, 'files') } });
 
-  const environment = stackEnvironment({ ...shared, webFolder: await webExport });
+  const environment = stackEnvironment({ mode: 'demo', state, ports, folder, host, publicUrl: process.env.PUBLIC_URL, webFolder: await webExport });
   await startStack({ processes, environment });
   greet({ environment, folder });
 }

@@ -9,6 +9,8 @@ import { PlainError } from './say.mjs';
  * @param ports { web, postgres, paymentFake, smtp, inbox }
  */
 export function stackEnvironment({ mode, state, ports, folder, webFolder, host = '127.0.0.1', publicUrl, database }) {
+  // The owner's connection is for migrations and the seed alone; what serves requests must not even know it.
+  const { DATABASE_OWNER_URL: _owner, ...databaseUrls } = databaseEnvironment({ port: ports.postgres, passwords: state.passwords, database });
   return {
     NODE_ENV: mode === 'test' ? 'test' : 'production',
     TRAYWARD_MODE: mode,
@@ -16,7 +18,7 @@ export function stackEnvironment({ mode, state, ports, folder, webFolder, host =
     PORT: String(ports.web),
     HOST: host,
     PUBLIC_URL: publicUrl ?? `http://localhost:${ports.web}`,
-    ...databaseEnvironment({ port: ports.postgres, passwords: state.passwords, database }),
+    ...databaseUrls,
     ACCESS_TOKEN_SECRET: state.accessTokenSecret,
     STRIPE_SECRET_KEY: state.stripeSecretKey,
     STRIPE_WEBHOOK_SECRET: state.stripeWebhookSecret,

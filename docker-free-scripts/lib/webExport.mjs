@@ -5,7 +5,7 @@ import { hashOf } from './hash.mjs';
 import { inRoot, root } from './paths.mjs';
 import { PlainError, say } from './say.mjs';
 
-const sources = ['app', 'components', 'shared', 'assets', 'package-lock.json', 'app.json', 'babel.config.js', 'metro.config.js', 'tsconfig.json'];
+const sources = ['app', 'components', 'shared', 'assets', 'public', 'package-lock.json', 'app.json', 'babel.config.js', 'metro.config.js', 'tsconfig.json'];
 const exportsKept = 3;
 
 /** The exported web app of the sources as they stand; exported only if that has not been done. Returns its folder; `signal` breaks it off. */
