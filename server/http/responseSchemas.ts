@@ -80,7 +80,9 @@ class Schemas {
       if (part.isStringLiteral() || part.isNumberLiteral()) words.push(part.value);
       else if (!isBoolean || !(part.flags & ts.TypeFlags.BooleanLiteral)) schemas.push(this.reference(part));
     }
-    if (words.length > 0) schemas.unshift({ enum: words });
+    if (words.length > 0) schemas.push({ enum: words.sort() });
+    // The checker orders a union by when it first met each part, which any unrelated change of code can alter.
+    schemas.sort((a, b) => (JSON.stringify(a) < JSON.stringify(b) ? -1 : 1));
     const [only] = schemas;
     return schemas.length === 1 && only ? only : { anyOf: schemas };
   }
