@@ -33,10 +33,12 @@ async function deposits(tx: EntityManager): Promise<DepositRow[]> {
   return rows.map((row) => ({ ...row, amountMinor: Number(row.amountMinor), captureBefore: row.captureBefore?.toISOString() ?? null }));
 }
 
-/** Steps waiting for the payment service, and those it refused, which need a person. A page that is merely open is not one. */
+/** Steps waiting for the payment service, and those it refused while the deposit is not settled: they need a person. */
 async function unfinishedSteps(tx: EntityManager): Promise<number> {
   const [row]: { count: number }[] = await tx.query(
-    "SELECT count(*)::int AS count FROM payment_step WHERE state = 'intended' OR (state = 'refused' AND kind <> 'open')");
+    `SELECT count(*)::int AS count FROM payment_step s JOIN payment p ON p.id = s.payment_id
+      WHERE s.state = 'intended'
+         OR (s.state = 'refused' AND s.kind <> 'open' AND NOT EXISTS (SELECT 1 FROM settlement t WHERE t.loan_id = p.loan_id AND t.state = 'done'))`);
   return row?.count ?? 0;
 }
 

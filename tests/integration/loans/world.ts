@@ -1,4 +1,6 @@
 import { randomBytes, randomUUID } from 'node:crypto';
+import { createServer, type RequestListener } from 'node:http';
+import type { AddressInfo } from 'node:net';
 import { runOnce } from 'graphile-worker';
 import pino from 'pino';
 import type { Response } from 'supertest';
@@ -49,17 +51,24 @@ export interface World {
 export interface WorldOptions {
   /** Stands between the app and the service, to cut lines. */
   wrap?: (payments: PaymentPort) => PaymentPort;
+  /** The fake's notices reach the app over HTTP; without it nobody hears of anything. */
+  notices?: boolean;
 }
 
-export async function makeWorld({ wrap = (payments) => payments }: WorldOptions = {}): Promise<World> {
+export async function makeWorld({ wrap = (payments) => payments, notices = false }: WorldOptions = {}): Promise<World> {
   const clock = { now: () => new Date() };
-  const fake = createPaymentFake({ webhookSecret, wallClockMs: () => clock.now().getTime() });
+  const inbox = notices ? await listen() : undefined;
+  const fake = createPaymentFake({
+    webhookSecret, wallClockMs: () => clock.now().getTime(), retryDelaysMs: [50, 50, 50, 50],
+    ...(inbox === undefined ? {} : { webhookUrl: `${inbox.url}/api/v1/webhooks/stripe` }),
+  });
   const { url: _url, ...apiBase } = await fake.start();
   const payments = wrap(createPaymentPort({ secretKey: 'sk_test_of_the_tests', webhookSecret, apiBase, timeoutMs: 5000, now: () => clock.now() }));
   // A fault of ours shows in the test's output, not only as a 500.
   const logger = pino({ level: 'error' }, pino.destination({ fd: 2, sync: true }));
   const test = await createTestApp({ dependencies: { payments, logger } });
   clock.now = () => test.clock.now;
+  inbox?.serve(test.app);
   const schoolId = await test.school('Portellery School');
   const people = { admin: await test.person(['admin'], schoolId, 'Ada Admin'), instructor: await test.person(['instructor'], schoolId, 'Iris Instructor'), student: await test.person(['student'], schoolId, 'Sam Student') };
   const deps = { db: test.db, mail: new RecordingMail(), payments, publicUrl: test.config.publicUrl, now: () => test.clock.now, log: logger };
@@ -70,9 +79,25 @@ export async function makeWorld({ wrap = (payments) => payments }: WorldOptions 
     later: (ms) => { test.clock.now = new Date(test.clock.now.getTime() + ms); },
     kit: (options) => makeKit(test, { slots: ['A', 'B'], schoolId, by: people.admin, ...options }),
     close: async () => {
-      await test.close();
       await fake.stop();
+      await inbox?.close();
+      await test.close();
     },
+  };
+}
+
+/** A port that is known before the app that will answer on it. */
+async function listen(): Promise<{ url: string; serve(app: RequestListener): void; close(): Promise<void> }> {
+  let answer: RequestListener = (_request, response) => void response.writeHead(503).end();
+  const server = createServer((request, response) => void answer(request, response));
+  await new Promise<void>((resolve) => server.listen(0, '127.0.0.1', resolve));
+  return {
+    url: `http://127.0.0.1:${(server.address() as AddressInfo).port}`,
+    serve: (app) => { answer = app; },
+    close: () => new Promise((resolve) => {
+      server.close(() => resolve());
+      server.closeAllConnections();
+    }),
   };
 }
 
