@@ -26,7 +26,9 @@ await runScript(async () => {
     database: urls.app.pathname.slice(1),
     passwords: Object.fromEntries(Object.entries(urls).map(([role, url]) => [role, decodeURIComponent(url.password)])),
     ownerUrl: urls.owner.href,
+    appUrl: urls.app.href,
     queueUrl: urls.queue.href,
+    seed: false,
   };
   const built = inRoot('dist-server', 'docker-free-scripts', 'prepare-database.js');
   const args = existsSync(built) ? [built] : runTs('docker-free-scripts/prepare-database.ts');

@@ -1,4 +1,4 @@
-import { spawnSync } from 'node:child_process';
+import { spawn } from 'node:child_process';
 import pg from 'pg';
 import { root, runTs } from './paths.mjs';
 import { PlainError } from './say.mjs';
@@ -33,22 +33,30 @@ export async function asSuperuser({ port, password, database = 'postgres' }, wor
 }
 
 /**
- * Roles, database and newest schema, by the server's own code (see prepare-database.ts): the product has one definition of them.
+ * Roles, database, newest schema and (with `seed`) the demo's content, by the server's own code: see prepare-database.ts.
+ * @param files where the seed puts photos
  */
-export function prepareDatabase({ port, superuserPassword, passwords, database = DATABASE }) {
+export async function prepareDatabase({ port, superuserPassword, passwords, database = DATABASE, seed = false, files = '' }) {
   const urls = databaseEnvironment({ port, passwords, database });
-  const short = Object.fromEntries(roles.map((role) => [role.replace('trayward_', ''), passwords[role]]));
   const input = {
     adminUrl: databaseUrl({ role: 'postgres', password: superuserPassword, port, database: 'postgres' }),
-    database, passwords: short, ownerUrl: urls.DATABASE_OWNER_URL, queueUrl: urls.DATABASE_QUEUE_URL,
+    database,
+    passwords: Object.fromEntries(roles.map((role) => [role.replace('trayward_', ''), passwords[role]])),
+    ownerUrl: urls.DATABASE_OWNER_URL, appUrl: urls.DATABASE_URL, queueUrl: urls.DATABASE_QUEUE_URL,
+    seed,
   };
-  runServerScript('docker-free-scripts/prepare-database.ts', { input: JSON.stringify(input) });
+  const { code, output } = await run(runTs('docker-free-scripts/prepare-database.ts'), { STORAGE_DIR: files }, JSON.stringify(input));
+  if (code !== 0) throw new PlainError(`The database could not be prepared:\n${output}`.trimEnd());
 }
 
-/** Runs one of the server's scripts to its end; its output is shown only when it fails. */
-export function runServerScript(file, { environment = {}, input = '' } = {}) {
-  const result = spawnSync(process.execPath, runTs(file), {
-    cwd: root, env: { ...process.env, ...environment }, input, encoding: 'utf8',
+/** Runs node to its end and collects what it says, which is worth showing only when it fails. */
+function run(args, environment, input) {
+  return new Promise((resolve, reject) => {
+    let output = '';
+    const child = spawn(process.execPath, args, { cwd: root, env: { ...process.env, ...environment } });
+    for (const stream of [child.stdout, child.stderr]) stream.on('data', (chunk) => { output += chunk; });
+    child.once('error', reject);
+    child.once('close', (code) => resolve({ code, output }));
+    child.stdin.end(input);
   });
-  if (result.status !== 0) throw new PlainError(`${file} failed:\n${result.stdout}${result.stderr}`.trimEnd());
 }

@@ -1,7 +1,7 @@
 import { existsSync, mkdirSync, readFileSync, rmSync, writeFileSync } from 'node:fs';
 import path from 'node:path';
 import { children } from './children.mjs';
-import { databaseEnvironment, prepareDatabase, runServerScript } from './database.mjs';
+import { prepareDatabase } from './database.mjs';
 import { keepOrChoosePort, portIsFree } from './ports.mjs';
 import { cluster } from './postgres.mjs';
 import { PlainError, say } from './say.mjs';
@@ -48,14 +48,11 @@ export async function runDemo({ folder, port, host }) {
 
 async function start({ folder, port, host, state, save, database, processes, signal }) {
   const ports = await preparePorts({ port, state, save, database });
-  const webExport = ensureWebExport({ signal });
-  webExport.catch(() => undefined); // awaited below; must not count as unhandled while the database is being prepared
-  const access = { port: ports.postgres, passwords: state.passwords };
-  prepareDatabase({ ...access, superuserPassword: state.superuserPassword });
-  mkdirSync(path.join(folder, 'files'), { recursive: true });
-  runServerScript('server/database/seed/main.ts', { environment: { ...databaseEnvironment(access), TRAYWARD_MODE: 'demo', STORAGE_DIR: path.join(folder, 'files') } });
-
-  const environment = stackEnvironment({ mode: 'demo', state, ports, folder, host, publicUrl: process.env.PUBLIC_URL, webFolder: await webExport });
+  const files = path.join(folder, 'files');
+  mkdirSync(files, { recursive: true });
+  const prepared = prepareDatabase({ port: ports.postgres, passwords: state.passwords, superuserPassword: state.superuserPassword, seed: true, files });
+  const [webFolder] = await Promise.all([ensureWebExport({ signal }), prepared]);
+  const environment = stackEnvironment({ mode: 'demo', state, ports, folder, host, publicUrl: process.env.PUBLIC_URL, webFolder });
   await startStack({ processes, environment });
   greet({ environment, folder });
 }

@@ -1,6 +1,6 @@
 import { existsSync, mkdirSync, readdirSync, rmSync, writeFileSync } from 'node:fs';
 import path from 'node:path';
-import { asSuperuser, databaseEnvironment, prepareDatabase, runServerScript } from './database.mjs';
+import { asSuperuser, prepareDatabase } from './database.mjs';
 import { hashOf } from './hash.mjs';
 import { keepOrChoosePort } from './ports.mjs';
 import { cluster } from './postgres.mjs';
@@ -101,11 +101,8 @@ async function ensureTemplate({ port, superuserPassword, passwords, folder }, ki
     await client.query(`DROP DATABASE IF EXISTS ${building} WITH (FORCE)`);
     if (base) await client.query(`CREATE DATABASE ${building} OWNER trayward_owner TEMPLATE ${client.escapeIdentifier(base)}`);
   });
-  prepareDatabase({ port, superuserPassword, passwords, database: building });
-  if (kind === 'seeded') {
-    runServerScript('server/database/seed/main.ts', { environment: {
-      ...databaseEnvironment({ port, passwords, database: building }), NODE_ENV: 'test', TRAYWARD_MODE: 'test', STORAGE_DIR: filesOf(folder, name) } });
-  }
+  mkdirSync(filesOf(folder, name), { recursive: true });
+  await prepareDatabase({ port, superuserPassword, passwords, database: building, seed: kind === 'seeded', files: filesOf(folder, name) });
   await asSuperuser(access, async (client) => {
     await client.query('SELECT pg_terminate_backend(pid) FROM pg_stat_activity WHERE datname = $1', [building]);
     await client.query(`ALTER DATABASE ${building} RENAME TO ${client.escapeIdentifier(name)}`);
