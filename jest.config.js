@@ -42,6 +42,8 @@ module.exports = {
       displayName: 'web',
       testMatch: ['<rootDir>/tests/web/**/*.test.ts?(x)'],
       moduleNameMapper: { ...webPreset.moduleNameMapper, ...aliases },
+      // d3 ships ES modules only.
+      transformIgnorePatterns: webPreset.transformIgnorePatterns.map((pattern) => pattern.replace('(?!(', '(?!(d3-|internmap|')),
       modulePathIgnorePatterns: ['<rootDir>/dist', '<rootDir>/.trayward'],
       setupFiles: [...(webPreset.setupFiles ?? []), '<rootDir>/tests/support/web/stubs.ts'],
       setupFilesAfterEnv: [...(webPreset.setupFilesAfterEnv ?? []), '<rootDir>/tests/support/web/matchers.ts'],

@@ -1,6 +1,6 @@
 import { usePathname } from 'expo-router';
 import { useEffect } from 'react';
-import { StyleSheet } from 'react-native';
+import { StyleSheet, View } from 'react-native';
 import { space, useTheme } from '@/components/theme';
 import { Dialog } from '@/components/ui/Dialog';
 import { LinkBox } from '@/components/ui/Link';
@@ -15,12 +15,14 @@ export function MoreDialog({ open, places, onClose }: { open: boolean; places: r
   useEffect(onClose, [pathname]); // eslint-disable-line react-hooks/exhaustive-deps -- only a change of page closes it
   return (
     <Dialog open={open} onClose={onClose} title="More places">
-      {places.map((place) => (
-        <LinkBox key={place.id} to={place.to} current={isWithin(place, pathname)} style={styles.row}>
-          <PlaceIcon id={place.id} chosen={isWithin(place, pathname)} ink={colors.ink} ground={colors.sheet} />
-          <Text strong>{place.label}</Text>
-        </LinkBox>
-      ))}
+      <View role="navigation" aria-label="More places">
+        {places.map((place) => (
+          <LinkBox key={place.id} to={place.to} current={isWithin(place, pathname)} style={styles.row}>
+            <PlaceIcon id={place.id} chosen={isWithin(place, pathname)} ink={colors.ink} ground={colors.sheet} />
+            <Text strong>{place.label}</Text>
+          </LinkBox>
+        ))}
+      </View>
     </Dialog>
   );
 }

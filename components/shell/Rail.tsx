@@ -37,7 +37,7 @@ function RailHead() {
     <View style={styles.head}>
       <View style={styles.name}>
         <Wordmark onField large />
-        <Text size="quiet" tone="softOnField" oneLine>
+        <Text size="quiet" tone="softOnField">
           {school?.schoolName}
         </Text>
       </View>

@@ -12,8 +12,9 @@ export function applyDocumentStyles({ name, colors }: Theme): void {
   if (!sheet) return;
   while (sheet.cssRules.length > 0) sheet.deleteRule(0);
   const rules = [
+    `html { background-color: ${colors.ground}; }`,
     `:root { color-scheme: ${name}; }`,
-    `body { background-color: ${colors.ground}; color: ${colors.ink}; overflow: auto; }`,
+    `body { background-color: ${colors.ground}; color: ${colors.ink}; }`,
     // The ring has two tones, so that it is seen on light, dark and coloured grounds alike.
     `:focus-visible { outline: 3px solid ${colors.action} !important; outline-offset: 2px !important; box-shadow: 0 0 0 2px ${colors.sheet} !important; }`,
     `h1:focus-visible, main:focus-visible { outline: none !important; box-shadow: none !important; }`,

@@ -33,19 +33,19 @@ export function Button(props: ButtonProps) {
   const { label, kind = 'primary', icon, style, accessibleLabel, busy, disabled, describedBy, expanded, haspopup } = props;
   const submit = useFormSubmit();
   const { colors } = useTheme();
-  const blocked = Boolean(busy || disabled);
   const act = props.submits ? submit : props.onPress;
   return (
     <Pressable
       role="button"
       aria-label={accessibleLabel ?? label}
       aria-busy={busy ?? false}
-      aria-disabled={blocked}
+      disabled={disabled ?? false}
       aria-expanded={expanded}
       {...(describedBy ? { 'aria-describedby': describedBy } : {})}
       {...(haspopup ? { 'aria-haspopup': haspopup } : {})}
       onPress={() => {
-        if (!blocked) act();
+        // While busy the button stays in place for the focus, and ignores presses.
+        if (!busy) act();
       }}
       style={({ pressed }) => [buttonShape(kind, colors), pressed && styles.pressed, disabled && styles.disabled, style]}
     >
@@ -68,10 +68,9 @@ export function ButtonFace({ label, kind = 'primary', icon }: ButtonLook) {
 }
 
 export function buttonShape(kind: ButtonKind, colors: Colors): ViewStyle[] {
-  const main = kind === 'primary' || kind === 'danger';
   const edge = kind === 'secondary' ? colors.ink : 'transparent';
   const ground = kind === 'primary' ? colors.solid : kind === 'danger' ? colors.different : kind === 'secondary' ? colors.sheet : 'transparent';
-  return [styles.shape, main ? styles.main : styles.side, { backgroundColor: ground, borderColor: edge }];
+  return [styles.shape, kind === 'quiet' ? styles.quiet : styles.main, { backgroundColor: ground, borderColor: edge }];
 }
 
 function textColour(kind: ButtonKind, colors: Colors): string {
@@ -90,7 +89,7 @@ const styles = StyleSheet.create({
     minWidth: size.target,
   },
   main: { minHeight: size.mainAction },
-  side: { minHeight: 48 },
+  quiet: { minHeight: size.target },
   face: { flexDirection: 'row', alignItems: 'center', justifyContent: 'center', gap: space.sm },
   pressed: { opacity: 0.8 },
   disabled: { opacity: 0.55 },

@@ -126,7 +126,7 @@ const styles = StyleSheet.create({
   head: { gap: space.xs },
   headRow: { flexDirection: 'row', gap: space.lg, alignItems: 'center' },
   headWords: { flex: 1, gap: space.xxs },
-  back: { flexDirection: 'row', alignItems: 'center', alignSelf: 'flex-start', gap: space.sm },
+  back: { flexDirection: 'row', alignItems: 'center', alignSelf: 'flex-start', gap: space.sm, marginTop: -space.md },
   footer: { padding: space.side, paddingVertical: space.md, gap: space.sm },
   footerWide: { alignSelf: 'flex-start', minWidth: 320, maxWidth: '100%', gap: space.sm, marginTop: space.sm },
   aside: { flexShrink: 0 },

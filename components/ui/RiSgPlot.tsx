@@ -110,7 +110,7 @@ function Axes({ x, y, width, height, colors }: { x: Scale; y: Scale; width: numb
         <Caption key={tick} x={margin.left - 6} y={y(tick) + 4} colour={colors.soft} words={tick.toFixed(1)} anchor="end" mono />
       ))}
       <Caption x={width - margin.right} y={height - 3} colour={colors.ink} words="refractive index" anchor="end" />
-      <Caption x={4} y={10} colour={colors.ink} words="SG" />
+      <Caption x={margin.left + 8} y={margin.top + 8} colour={colors.ink} words="SG" />
     </G>
   );
 }

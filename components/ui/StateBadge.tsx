@@ -34,7 +34,8 @@ const styles = StyleSheet.create({
   badge: {
     flexDirection: 'row',
     alignItems: 'center',
-    alignSelf: 'flex-start',
+    // Neither stretched in a column nor moved in a row; React Native's types do not know the web's word.
+    width: 'fit-content' as 'auto',
     gap: 5,
     paddingHorizontal: space.sm + 1,
     paddingVertical: 3,

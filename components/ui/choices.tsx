@@ -75,14 +75,14 @@ export function RadioField<Value extends string>({ label, hint, error, options, 
             onChange={() => onChange(option.value)}
             style={{ width: 22, height: 22, margin: 0, flexShrink: 0, accentColor: colors.action }}
           />
-          <span>
+          <View>
             <Text>{option.label}</Text>
             {option.hint ? (
               <Text size="quiet" tone="soft">
                 {option.hint}
               </Text>
             ) : null}
-          </span>
+          </View>
         </label>
       ))}
     </GroupFrame>

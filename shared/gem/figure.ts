@@ -22,14 +22,13 @@ export interface AxialFigure {
   axialAngleDeg: number;
   /** Turn of the stone on the stage, degrees; a biaxial figure parts its brushes most at 45. */
   turnDeg: number;
+  /** Half angle of the cone of light inside the stone, degrees: how far round the sight line the field reaches. */
+  coneDeg: number;
   /** Rotation of the plane of polarisation along the axis at sodium D, degrees per mm: quartz 21.7, others 0. */
   rotationDegPerMm: number;
   /** `bisectrix` looks between the axes, `axis` along one of them. The same for a uniaxial stone. */
   view: 'bisectrix' | 'axis';
 }
-
-/** Half angle of the cone of light inside the stone, degrees. */
-export const coneHalfAngleDeg = 36;
 
 /**
  * Computes the picture.
@@ -81,6 +80,7 @@ function checked(p: AxialFigure): AxialFigure {
   if (!within(p.birefringence, 0, 0.3)) throw new RangeError('Birefringence is 0 to 0.3');
   if (!within(p.thicknessMm, 0.001, 50)) throw new RangeError('Thickness is 0.001 to 50 mm');
   if (!within(p.axialAngleDeg, 0, 90)) throw new RangeError('The angle between the optic axes is 0 to 90 degrees');
+  if (!within(p.coneDeg, 1, 60)) throw new RangeError('The cone is 1 to 60 degrees to a side');
   if (!Number.isFinite(p.turnDeg) || !within(p.rotationDegPerMm, 0, 200)) throw new RangeError('Turn and rotation are finite angles');
   return p;
 }
@@ -95,12 +95,22 @@ function axialField(p: AxialFigure, size: number): LightField {
   const colours = retardationColours(p.rotationDegPerMm * p.thicknessMm);
   const axes = opticAxes(p);
   const pathNm = p.thicknessMm * 1e6 * p.birefringence;
-  const edge = Math.sin(toRad(coneHalfAngleDeg));
-  const optics = (x: number, y: number) => opticsAt((2 * (x + 0.5)) / size - 1, 1 - (2 * (y + 0.5)) / size, { axes, pathNm, edge });
+  const edge = Math.sin(toRad(p.coneDeg));
+  // One column and one row more than the picture: the step to the next pixel tells how much of a ring a pixel holds.
+  const side = size + 1;
+  const retardations = new Float64Array(side * side);
+  const sines = new Float64Array(side * side);
+  for (let at = 0; at < side * side; at++) {
+    const [u, v] = [(2 * ((at % side) + 0.5)) / size - 1, 1 - (2 * (Math.floor(at / side) + 0.5)) / size];
+    const { retardation, sine2 } = opticsAt(u, v, { axes, pathNm, edge });
+    retardations[at] = retardation;
+    sines[at] = sine2;
+  }
   return (x, y, out) => {
-    const here = optics(x, y);
-    const stretch = Math.max(Math.abs(optics(x + 1, y).retardation - here.retardation), Math.abs(optics(x, y + 1).retardation - here.retardation));
-    colours.mean(here.retardation, stretch, here.sine2, out);
+    const at = y * side + x;
+    const here = retardations[at]!;
+    const stretch = Math.max(Math.abs(retardations[at + 1]! - here), Math.abs(retardations[at + side]! - here));
+    colours.mean(here, stretch, sines[at]!, out);
   };
 }
 

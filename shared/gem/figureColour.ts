@@ -43,37 +43,64 @@ export function rotationDegPerMm(nm: number, perMmAtD: number): number {
   return (perMmAtD * drude(nm)) / drude(589.3);
 }
 
-/** Tables for one stone: `turnDegAtD` is its whole rotation along the path at sodium D, degrees (0 for all but quartz). */
+/** What of a wavelength does not change from one retardation to the next, laid out flat because the loop over it is hot. */
+const samples = {
+  count: wavelengthsNm.length,
+  /** Retardance of 1 nm of path difference, rad. */
+  retardance: Float64Array.from(wavelengthsNm, (nm) => (2 * Math.PI) / nm),
+  /** Half the spread of that retardance over the sample's band, rad. */
+  halfBand: Float64Array.from(wavelengthsNm, (nm) => (Math.PI * wavelengthStepNm) / (nm * nm)),
+  weights: Float64Array.from(linearWeights.flat()),
+};
+
+const known = new Map<number, RetardationColours>();
+const mostKnown = 24;
+
+/**
+ * Tables for one stone, kept for the next of its kind.
+ * @param turnDegAtD whole rotation along the path at sodium D, degrees; 0 for all but quartz
+ */
 export function retardationColours(turnDegAtD: number): RetardationColours {
+  const before = known.get(turnDegAtD);
+  if (before) return before;
+  const colours = buildColours(turnDegAtD);
+  if (known.size >= mostKnown) known.delete(known.keys().next().value ?? 0);
+  known.set(turnDegAtD, colours);
+  return colours;
+}
+
+function buildColours(turnDegAtD: number): RetardationColours {
   const length = Math.floor(longestNm / stepNm) + 1;
   const linear = new Float64Array(3 * (length + 1));
   const rotated = new Float64Array(3 * (length + 1));
-  for (let index = 0; index < length; index++) addEntry(index, turnDegAtD, linear, rotated);
+  const turns = Float64Array.from(wavelengthsNm, (nm) => (turnDegAtD === 0 ? 0 : (rotationDegPerMm(nm, turnDegAtD) * Math.PI) / 180));
+  for (let index = 0; index < length; index++) addEntry(index, turns, linear, rotated);
   return { mean: (retardation, stretch, sine2, out) => mean({ linear, rotated, length }, { retardation, stretch, sine2 }, out) };
 }
 
 /** Appends entry `index` to the running sums. */
-function addEntry(index: number, turnDegAtD: number, linear: Float64Array, rotated: Float64Array): void {
+function addEntry(index: number, turns: Float64Array, linear: Float64Array, rotated: Float64Array): void {
+  const { cos, sqrt } = Math;
+  const { count, retardance, halfBand, weights } = samples;
   const retardation = index * stepNm;
   const at = 3 * index;
   let [lr, lg, lb, rr, rg, rb] = [0, 0, 0, 0, 0, 0];
-  for (let w = 0; w < wavelengthsNm.length; w++) {
-    const nm = wavelengthsNm[w]!;
-    const weight = linearWeights[w]!;
-    const delta = (2 * Math.PI * retardation) / nm;
-    const turn = turnDegAtD === 0 ? 0 : (rotationDegPerMm(nm, turnDegAtD) * Math.PI) / 180;
+  for (let w = 0; w < count; w++) {
+    const delta = retardance[w]! * retardation;
+    const turn = turns[w]!;
     const total2 = delta * delta + 4 * turn * turn;
     if (total2 === 0) continue;
     // Each sample stands for a band; over it cos Δ averages to cos Δ · sinc, which lets high orders fade to white.
-    const passed = (1 - Math.cos(Math.sqrt(total2)) * sinc((Math.PI * retardation * wavelengthStepNm) / (nm * nm))) / 2;
+    const passed = (1 - cos(sqrt(total2)) * sinc(halfBand[w]! * retardation)) / 2;
     const l = (passed * delta * delta) / total2;
     const r = passed - l;
-    lr += l * weight[0];
-    lg += l * weight[1];
-    lb += l * weight[2];
-    rr += r * weight[0];
-    rg += r * weight[1];
-    rb += r * weight[2];
+    const [red, green, blue] = [weights[3 * w]!, weights[3 * w + 1]!, weights[3 * w + 2]!];
+    lr += l * red;
+    lg += l * green;
+    lb += l * blue;
+    rr += r * red;
+    rg += r * green;
+    rb += r * blue;
   }
   append(linear, at, lr, lg, lb);
   append(rotated, at, rr, rg, rb);

@@ -1,5 +1,5 @@
 import { axialAngle2VzDeg } from './axialAngle';
-import { coneHalfAngleDeg, type FigureParameters } from './figure';
+import type { FigureParameters } from './figure';
 import type { IndexTable, Range, SpeciesRow } from './speciesRow';
 
 /** What decides a stone's figure; any row of the species table has it. */
@@ -11,7 +11,10 @@ export const quartzRotationDegPerMm = 21.7;
 /** A cabochon's height, mm: what the view passes through when nothing better is known. */
 const usualHeightMm = 3;
 
-/** Path difference across the axis at which rings can still be told apart on a small disc, nm. */
+/** Half angles of the cone of light, degrees: a wider one shows both axes of most biaxial stones. */
+const cone = { uniaxial: 36, biaxial: 48 } as const;
+
+/** Path difference across the axis at which rings can still be told apart on a small disc, nm, for a birefringence of 0.009. */
 const readablePathNm = 24_000;
 
 /**
@@ -31,7 +34,7 @@ export function figureOfSpecies(subject: FigureSubject, { turnDeg = 45, heightMm
     case 'uniaxial': {
       const quartz = subject.group === 'quartz';
       return {
-        kind: 'axial', birefringence, turnDeg, axialAngleDeg: 0, view: 'bisectrix',
+        kind: 'axial', birefringence, turnDeg, axialAngleDeg: 0, view: 'bisectrix', coneDeg: cone.uniaxial,
         thicknessMm: quartz ? heightMm : readableThickness(heightMm, birefringence, 1),
         rotationDegPerMm: quartz ? quartzRotationDegPerMm : 0,
       };
@@ -39,8 +42,12 @@ export function figureOfSpecies(subject: FigureSubject, { turnDeg = 45, heightMm
     case 'biaxial': {
       const axialAngleDeg = acuteAxialAngle(subject.ri);
       // Axes that lie outside the cone are never seen together; one then looks along one of them.
-      const view = axialAngleDeg / 2 > 0.9 * coneHalfAngleDeg ? 'axis' : 'bisectrix';
-      return { kind: 'axial', birefringence, turnDeg, axialAngleDeg, view, thicknessMm: readableThickness(heightMm, birefringence, 0.5), rotationDegPerMm: 0 };
+      const view = axialAngleDeg / 2 > 0.85 * cone.biaxial ? 'axis' : 'bisectrix';
+      return {
+        kind: 'axial', birefringence, turnDeg, axialAngleDeg, view, coneDeg: cone.biaxial,
+        thicknessMm: readableThickness(heightMm, birefringence, 0.4),
+        rotationDegPerMm: 0,
+      };
     }
   }
 }
@@ -62,7 +69,9 @@ function strained({ id, group, adrCommon }: FigureSubject): FigureParameters | n
 
 function readableThickness(heightMm: number, birefringence: number, share: number): number {
   if (birefringence <= 0) return heightMm;
-  return Math.min(heightMm, (share * readablePathNm) / (birefringence * 1e6));
+  // A little more for stronger stones, so that their rings stay finer than those of weaker ones.
+  const pathNm = share * readablePathNm * (birefringence / 0.009) ** 0.3;
+  return Math.min(heightMm, pathNm / (birefringence * 1e6));
 }
 
 /** 2V about the acute bisectrix from the middles of the index ranges, degrees; 60 where the table has no three indices. */
