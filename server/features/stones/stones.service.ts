@@ -6,6 +6,7 @@ import { refuseBlind } from '@/server/features/bench/blindness';
 import { recordCustody } from '@/server/features/custody/custody.service';
 import { openLoansOf } from '@/server/features/kits/kits.queries';
 import { lockKit } from '@/server/features/kits/standing';
+import { voidLabel } from '@/server/features/labels/issue.service';
 import { invalid, refused } from '@/server/http/problem';
 import { Stone } from './stone.entity';
 import { findStone, stonesOfKits } from './stones.queries';
@@ -63,8 +64,10 @@ export async function changeStone(tx: EntityManager, actor: SchoolActor, stoneId
   const { id: _id, schoolId: _schoolId, kitId: _kitId, createdAt: _createdAt, ...columns } = after;
   const { affected } = await tx.update(Stone, { id: stoneId, version: change.version }, columns);
   if (affected !== 1) throw refused('changed_meanwhile', 'Somebody else changed this stone meanwhile. Reload it and make the change again.');
-  const kind = after.standing === 'retired' && before.standing !== 'retired' ? 'stone_retired' : 'stone_changed';
+  const retires = after.standing === 'retired' && before.standing !== 'retired';
+  const kind = retires ? 'stone_retired' : 'stone_changed';
   await recordCustody(tx, { schoolId: actor.schoolId, kitId: before.kitId, stoneId, kind, actorId: actor.accountId, at: now });
+  if (retires) await voidLabel(tx, actor, { kitId: before.kitId, stoneId }, now);
   return stoneView(tx, after);
 }
 
