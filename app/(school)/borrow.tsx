@@ -1,0 +1,1 @@
+export { BorrowScreen as default } from '@/components/lending/BorrowScreen';

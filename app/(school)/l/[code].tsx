@@ -1,0 +1,1 @@
+export { LabelLinkScreen as default } from '@/components/scan/LabelLinkScreen';

@@ -1,0 +1,1 @@
+export { LoanScreen as default } from '@/components/lending/LoanScreen';

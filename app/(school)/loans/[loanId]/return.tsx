@@ -1,0 +1,1 @@
+export { ReturnScreen as default } from '@/components/lending/ReturnScreen';

@@ -1,0 +1,1 @@
+export { MyLoansScreen as default } from '@/components/lending/MyLoansScreen';
