@@ -77,7 +77,7 @@ export function createPaymentFake(options: PaymentFakeOptions): PaymentFake {
       const address = addressOf(server.address(), host);
       if (bank.pageBase === '') bank.pageBase = address.url;
       courier.resume();
-      ticking = setInterval(() => tick(desk), tickMs);
+      ticking = setInterval(() => tick(desk), tickMs).unref();
       return address;
     },
     async stop() {

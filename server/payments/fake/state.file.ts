@@ -1,4 +1,4 @@
-import { readFileSync } from 'node:fs';
+import { existsSync, readFileSync } from 'node:fs';
 import { mkdir, open, rename } from 'node:fs/promises';
 import path from 'node:path';
 
@@ -58,14 +58,8 @@ export function createStateFile(filePath: string): StateFile {
 }
 
 function readState(filePath: string): State {
-  let text: string;
-  try {
-    text = readFileSync(filePath, 'utf8');
-  } catch (error) {
-    if (error instanceof Error && 'code' in error && error.code === 'ENOENT') return emptyState();
-    throw error;
-  }
-  const parsed: unknown = JSON.parse(text);
+  if (!existsSync(filePath)) return emptyState();
+  const parsed: unknown = JSON.parse(readFileSync(filePath, 'utf8'));
   if (!isState(parsed)) throw new Error(`${filePath} was not written by this payment fake: move it away or reset the demo.`);
   return parsed;
 }

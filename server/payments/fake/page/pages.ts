@@ -47,7 +47,7 @@ ${note.notice !== null && html`<p class="alert" role="alert" id="notice">${note.
 ${note.item.description !== null && html`<dt>About</dt><dd>${note.item.description}</dd>`}
 ${session.amount_total !== null && html`<dt>Amount</dt><dd>${moneyText(session.amount_total, session.currency ?? 'usd')}</dd>`}
 </dl>
-<p>${words.meaning}</p>
+${session.custom_text.submit === null && html`<p>${words.meaning}</p>`}
 </section>
 <form method="post" class="sheet" novalidate>
 ${emailField(session)}
@@ -55,7 +55,7 @@ ${emailField(session)}
 <p class="hint" id="card-hint">A test card, such as 4242 4242 4242 4242</p>
 <input id="card" name="card" inputmode="numeric" autocomplete="off" required aria-describedby="card-hint${note.notice !== null && ' notice'}">
 <div class="pair">
-<div><label for="expiry">Expires (MM / YY)</label><input id="expiry" name="expiry" inputmode="numeric" autocomplete="off" placeholder="12 / 34" required></div>
+<div><label for="expiry">Expires (MM/YY)</label><input id="expiry" name="expiry" inputmode="numeric" autocomplete="off" placeholder="12 / 34" required></div>
 <div><label for="cvc">Security code</label><input id="cvc" name="cvc" inputmode="numeric" autocomplete="off" placeholder="123" required></div>
 </div>
 ${session.custom_text.submit !== null && html`<p>${session.custom_text.submit.message}</p>`}

@@ -10,6 +10,7 @@ main { max-width: 480px; margin: 0 auto; padding: 18px; }
 .banner { background: var(--note); color: var(--on-note); border-bottom: 2px dashed currentColor; padding: 12px 18px; text-align: center; font-weight: 700; }
 h1 { font-size: 27px; line-height: 1.2; margin: 20px 0 8px; }
 .sheet { background: var(--sheet); border-radius: 14px; padding: 18px; margin: 14px 0; }
+.sheet > :first-child { margin-top: 0; } .sheet > :last-child { margin-bottom: 0; }
 dl { margin: 0; display: grid; grid-template-columns: auto 1fr; gap: 4px 16px; }
 dt { color: var(--soft); } dd { margin: 0; text-align: right; font-variant-numeric: tabular-nums; overflow-wrap: anywhere; }
 label { display: block; font-weight: 600; margin: 14px 0 4px; }
