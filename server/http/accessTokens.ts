@@ -17,7 +17,8 @@ export function createAccessTokens(secret: string): AccessTokens {
     issue(accountId, now) {
       const issuedAt = Math.floor(now.getTime() / 1000);
       const expires = issuedAt + accessTokenRules.minutes * 60;
-      const accessToken = jwt.sign({ sub: accountId, iat: issuedAt, exp: expires }, key, {
+      const accessToken = jwt.sign({ iat: issuedAt, exp: expires }, key, {
+        subject: accountId,
         algorithm: accessTokenRules.algorithm,
         issuer: accessTokenRules.issuer,
         audience: accessTokenRules.audience,

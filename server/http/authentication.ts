@@ -37,6 +37,7 @@ export function authentication(tokens: AccessTokens): RequestHandler {
         next();
       }
     };
-    void passport.authenticate('jwt', { session: false }, decide)(request, response, next);
+    const check = passport.authenticate('jwt', { session: false }, decide) as RequestHandler;
+    void check(request, response, next);
   };
 }

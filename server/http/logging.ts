@@ -1,4 +1,4 @@
-import type { IncomingMessage, ServerResponse } from 'node:http';
+import type { ServerResponse } from 'node:http';
 import type { RequestHandler } from 'express';
 import pino, { type Logger } from 'pino';
 import { pinoHttp } from 'pino-http';
@@ -14,13 +14,13 @@ export function createLogger(level: string): Logger {
  * (`POST /invitations/:token/acceptance`), never the address itself: addresses carry tokens and search words.
  */
 export function requestLog(logger: Logger): RequestHandler {
-  return pinoHttp<IncomingMessage, ServerResponse>({
+  return pinoHttp({
     logger,
     genReqId: (_request, response) => String(localsOf(response)['requestId']),
     serializers: { req: () => undefined, res: () => undefined, err: () => undefined },
     customProps: (request, response) => ({
       requestId: localsOf(response)['requestId'],
-      operation: localsOf(response)['operation'] ?? `${request.method ?? ''} (web)`,
+      operation: localsOf(response)['operation'] ?? `${request.method} (web)`,
       status: response.statusCode,
     }),
     customLogLevel: (_request, response) => (response.statusCode >= 500 ? 'warn' : 'info'),

@@ -150,12 +150,6 @@ export interface AnyRoute {
  * cannot be kept (an idempotent route without an account, say) throws when the process starts.
  */
 export function route<A extends Access, const Path extends string, R, B extends object = object, Q extends object = object>(
-  declared: TransactionRoute<A, Path, B, Q, R>,
-): AnyRoute;
-export function route<A extends Access, const Path extends string, R, B extends object = object, Q extends object = object>(
-  declared: FreeRoute<A, Path, B, Q, R>,
-): AnyRoute;
-export function route<A extends Access, const Path extends string, R, B extends object, Q extends object>(
   declared: TransactionRoute<A, Path, B, Q, R> | FreeRoute<A, Path, B, Q, R>,
 ): AnyRoute {
   const { method, path, permission, summary, request, query, response, idempotent } = declared;
@@ -169,7 +163,7 @@ export function route<A extends Access, const Path extends string, R, B extends 
     method, path, permission, summary, request, query, response, idempotent, run,
     status: response.kind === 'nothing' ? 204 : (declared.status ?? 200),
     files: 'files' in declared ? declared.files : undefined,
-    rawBody: 'body' in declared && declared.body === 'raw',
+    rawBody: 'body' in declared,
   };
 }
 

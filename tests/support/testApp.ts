@@ -12,6 +12,7 @@ import type { Dependencies } from '@/server/http/services';
 import type { Role } from '@shared/permissions';
 import { Client } from 'pg';
 import { createTestDatabase, type TestDatabase } from './database';
+import { idlePayments, memoryStorage } from './standIns';
 
 /** The app on a database of its own, mounted without a port, with a clock that tests move. */
 export interface TestApp {
@@ -44,13 +45,6 @@ export interface TestAppOptions {
   readonly dependencies?: Partial<Pick<Dependencies, 'payments' | 'storage' | 'logger'>>;
 }
 
-/** Payments and storage are refused unless a test brings its own: a test that reaches them by accident should say so. */
-function absent<T extends object>(name: string): T {
-  return new Proxy({} as T, {
-    get: () => () => { throw new Error(`This test did not bring its ${name}`); },
-  });
-}
-
 export async function createTestApp(options: TestAppOptions = {}): Promise<TestApp> {
   const database = await createTestDatabase();
   const config = readConfig({
@@ -63,7 +57,7 @@ export async function createTestApp(options: TestAppOptions = {}): Promise<TestA
   await owner.connect();
   const clock = { now: new Date() };
   const dependencies: Dependencies = {
-    config, db, clock: () => clock.now, logger: pino({ level: 'silent' }), payments: absent('payment service'), storage: absent('storage'), ...options.dependencies,
+    config, db, clock: () => clock.now, logger: pino({ level: 'silent' }), payments: idlePayments(), storage: memoryStorage(), ...options.dependencies,
   };
   const app = createApp(dependencies, options.routes);
   const tokens = createAccessTokens(config.accessTokenSecret);

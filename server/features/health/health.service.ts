@@ -19,7 +19,7 @@ export async function readHealth(db: Database): Promise<HealthView> {
   const uptimeSeconds = Math.floor(process.uptime());
   const queue = await inTime(readQueue(db));
   if (!queue) {
-    const database = await inTime(withSystem(db, (tx) => tx.query('SELECT 1')));
+    const database = await inTime(withSystem(db, (tx) => tx.query<unknown[]>('SELECT 1')));
     return { status: 'failing', uptimeSeconds, database: database ? 'ok' : 'failing', queue: { status: 'failing', ready: null, waitedSeconds: null, failed: null, workerSeenAt: null } };
   }
   const status = queue.waitedSeconds > queueLateAfterS ? 'failing' : 'ok';

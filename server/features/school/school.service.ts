@@ -19,7 +19,7 @@ export async function readSchool(tx: EntityManager, schoolId: string): Promise<S
 /** Changes what is sent and leaves the rest. */
 export async function changeSchool(tx: EntityManager, { schoolId }: SchoolActor, body: SchoolChangeBody): Promise<SchoolView> {
   const { depositRule, ...rest } = body;
-  const sent = Object.fromEntries(Object.entries(rest).filter(([, value]) => value !== undefined));
+  const sent = Object.fromEntries(Object.entries<unknown>(rest).filter(([, value]) => value !== undefined));
   const change = { ...sent, ...(depositRule ? { depositRule: toDepositRule(depositRule) } : {}) };
   if (body.currency !== undefined) await refuseNewCurrency(tx, schoolId, body.currency);
   if (Object.keys(change).length > 0) await tx.update(School, { id: schoolId }, change);

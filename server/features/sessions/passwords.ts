@@ -33,8 +33,7 @@ function hashOfNobody(): Promise<string> {
 
 /** Why a new password cannot be taken, in words; undefined when it can. */
 export function passwordFault(password: string, email: string): string | undefined {
-  const letters = [...spelled(password)].length;
-  if (letters < passwordMinLength) return `Use at least ${passwordMinLength} characters. A few words in a row are easy to remember.`;
+  if (spelled(password).length < passwordMinLength) return `Use at least ${passwordMinLength} characters. A few words in a row are easy to remember.`;
   const [name = ''] = email.split('@');
   const lower = spelled(password).toLowerCase();
   if (lower === email || lower === name) return 'Do not use your e-mail address as the password.';
