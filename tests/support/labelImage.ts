@@ -55,7 +55,7 @@ export async function readQrCodes(pictures: readonly Buffer[]): Promise<string[]
     for (const [index, picture] of pictures.entries()) {
       const file = path.join(folder, `${index}.png`);
       await writeFile(file, picture);
-      texts.push(await run('zbarimg', ['-q', '--raw', '-Sdisable', '-Sqrcode.enable', file]).then(({ stdout }) => stdout.trim(), () => ''));
+      texts.push(await run('zbarimg', ['-q', '--raw', '--nodbus', '-Sdisable', '-Sqrcode.enable', file]).then(({ stdout }) => stdout.trim(), () => ''));
     }
     return texts;
   } finally {
