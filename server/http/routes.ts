@@ -1,4 +1,6 @@
+import { benchRoutes } from '@/server/features/bench/bench.routes';
 import { depositsRoutes } from '@/server/features/deposits/deposits.routes';
+import { deskRoutes } from '@/server/features/desk/desk.routes';
 import { healthRoutes } from '@/server/features/health/health.routes';
 import { instrumentsRoutes } from '@/server/features/instruments/instruments.routes';
 import { kitsRoutes } from '@/server/features/kits/kits.routes';
@@ -9,6 +11,7 @@ import { peopleRoutes } from '@/server/features/people/people.routes';
 import { photosRoutes } from '@/server/features/photos/photos.routes';
 import { schoolRoutes } from '@/server/features/school/school.routes';
 import { sessionsRoutes } from '@/server/features/sessions/sessions.routes';
+import { settlementRoutes } from '@/server/features/settlement/settlement.routes';
 import { speciesRoutes } from '@/server/features/species/species.routes';
 import { stonesRoutes } from '@/server/features/stones/stones.routes';
 import { verdictsRoutes } from '@/server/features/verdicts/verdicts.routes';
@@ -18,4 +21,5 @@ import type { AnyRoute } from './route';
 export const allRoutes: readonly AnyRoute[] = [
   ...healthRoutes, ...sessionsRoutes, ...peopleRoutes, ...schoolRoutes, ...depositsRoutes, ...loansRoutes,
   ...moneyRoutes, ...instrumentsRoutes, ...kitsRoutes, ...labelsRoutes, ...photosRoutes, ...speciesRoutes, ...stonesRoutes, ...verdictsRoutes,
+  ...benchRoutes, ...settlementRoutes, ...deskRoutes,
 ];
