@@ -1,7 +1,7 @@
 import { as } from '@/tests/support/testApp';
 import type { LoanView } from '@shared/api/loans';
 import { cuttable, dayMs, decide, minuteMs, serviceBooks, settlementState } from '../integration/deposits/support';
-import { balances, makeWorld, mails, ok, openPage, payCard, paymentOf, readyToPay, takeOut, transfers, type World } from '../integration/loans/world';
+import { balances, holding, makeWorld, mails, ok, openPage, payCard, paymentOf, readyToPay, takeOut, transfers, type World } from '../integration/loans/world';
 
 let world: World;
 const line = cuttable();
@@ -39,7 +39,7 @@ it('answers a retry with the same key after such a kill with the page, not with 
   const tryToPay = () => as(world.test, world.student).post(`/loans/${loan.id}/payment`).set('Idempotency-Key', 'the-same-key');
   expect((await tryToPay()).status).toBe(500);
   const second = await tryToPay();
-  expect(second).toMatchObject({ status: 200, body: { url: expect.stringContaining('http') } });
+  expect(second).toMatchObject({ status: 200, body: { url: holding('http') } });
   const third = await tryToPay();
   expect(third.headers).toMatchObject({ 'idempotency-hit': 'true' });
   expect(third.body).toEqual(second.body);

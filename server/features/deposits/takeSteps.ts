@@ -74,8 +74,9 @@ async function reach(work: PaymentWork, next: Next, goal: DepositGoal): Promise<
     const seen = await work.payments.readPayment(intentId);
     try {
       const reached = await call(work, next.step, seen, goal);
-      if (typeof reached === 'string') return await refuseStep(work, next, reached, seen);
-      return await recordReached(work, next, goal, reached);
+      if (typeof reached === 'string') await refuseStep(work, next, reached, seen);
+      else await recordReached(work, next, goal, reached);
+      return;
     } catch (error) {
       if (error instanceof PaymentConflict && attempt < triesMax) continue;
       if (error instanceof PaymentRefused || error instanceof PaymentConflict) return refuseStep(work, next, error.code, seen);

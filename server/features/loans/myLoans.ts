@@ -1,5 +1,5 @@
 import type { EntityManager } from 'typeorm';
-import { cursorValues, pageOf, rowsToAsk, type PageQuery } from '@/server/http/paging';
+import { cursorValues, pageOf, rowsToAsk, PageQuery } from '@/server/http/paging';
 import type { Page } from '@shared/api/common';
 import type { LoanView } from '@shared/api/loans';
 import { loanViews } from './loanView';
@@ -8,7 +8,7 @@ const pageDefault = 20;
 
 /** The viewer's own loans, newest first, each as its borrower sees it. */
 export async function myLoans(tx: EntityManager, viewerId: string, asked: PageQuery, now: Date): Promise<Page<LoanView>> {
-  const query = { ...asked, limit: asked.limit ?? pageDefault };
+  const query = Object.assign(new PageQuery(), asked, { limit: asked.limit ?? pageDefault });
   const [reservedKey, id] = cursorValues(query, 2) ?? [];
   const rows: { id: string; reservedKey: string }[] = await tx.query(
     `SELECT id, to_char(reserved_at AT TIME ZONE 'UTC', 'YYYY-MM-DD"T"HH24:MI:SS.US"Z"') AS "reservedKey" FROM loan

@@ -75,7 +75,7 @@ export async function makeWorld({ wrap = (payments) => payments, notices = false
   return {
     test, fake, payments, deps, schoolId, ...people,
     jobs: () => workQueue(test, deps),
-    job: (name, payload) => handlerOf(name)(deps, payload, { number: 1, isLast: false }),
+    job: (name, payload) => perform(deps, name, payload),
     later: (ms) => { test.clock.now = new Date(test.clock.now.getTime() + ms); },
     kit: (options) => makeKit(test, { slots: ['A', 'B'], schoolId, by: people.admin, ...options }),
     close: async () => {
@@ -88,8 +88,12 @@ export async function makeWorld({ wrap = (payments) => payments, notices = false
 
 /** A port that is known before the app that will answer on it. */
 async function listen(): Promise<{ url: string; serve(app: RequestListener): void; close(): Promise<void> }> {
-  let answer: RequestListener = (_request, response) => void response.writeHead(503).end();
-  const server = createServer((request, response) => void answer(request, response));
+  let answer: RequestListener = (_request, response) => {
+    response.writeHead(503).end();
+  };
+  const server = createServer((request, response) => {
+    answer(request, response);
+  });
   await new Promise<void>((resolve) => server.listen(0, '127.0.0.1', resolve));
   return {
     url: `http://127.0.0.1:${(server.address() as AddressInfo).port}`,
@@ -101,11 +105,14 @@ async function listen(): Promise<{ url: string; serve(app: RequestListener): voi
   };
 }
 
-const handlerOf = <N extends JobName>(name: N): JobHandler<JobPayload<N>> => tasks[name];
+function perform<N extends JobName>(deps: JobDeps, name: N, payload: JobPayload<N>): Promise<void> {
+  const handler: JobHandler<JobPayload<N>> = tasks[name];
+  return handler(deps, payload, { number: 1, isLast: false });
+}
 
 async function workQueue(test: TestApp, deps: JobDeps): Promise<void> {
-  const perform = <N extends JobName>(name: N) => async (raw: unknown) => handlerOf(name)(deps, payloads[name](raw) as JobPayload<N>, { number: 1, isLast: false });
-  const taskList = Object.fromEntries((Object.keys(tasks) as JobName[]).map((name) => [name, perform(name)]));
+  const names = Object.keys(tasks) as JobName[];
+  const taskList = Object.fromEntries(names.map((name) => [name, (raw: unknown) => perform(deps, name, payloads[name](raw) as JobPayload<typeof name>)]));
   await runOnce({ connectionString: test.database.queueUrl, taskList, logger: workerLogger(), noHandleSignals: true });
 }
 
@@ -145,7 +152,11 @@ async function intake(test: TestApp, schoolId: string, stoneId: string, by: Test
   await insert('optic_figure', null, 'biaxial', null);
 }
 
-/** Unwraps an answer, or fails with what the server said. */
+/** For `toMatchObject`: a text that holds these words. */
+export const holding = (words: string): unknown => expect.stringContaining(words);
+
+/** Unwraps an answer as the type its route declares, or fails with what the server said. */
+// eslint-disable-next-line @typescript-eslint/no-unnecessary-type-parameters -- a body off the wire has no type of its own
 export function ok<T>(response: Response): T {
   if (response.status >= 300) throw new Error(`${response.status} ${JSON.stringify(response.body)}`);
   return response.body as T;
