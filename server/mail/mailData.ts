@@ -65,7 +65,7 @@ export interface MailData {
   /** Every stone is the recorded one: the verdict and the release in one mail. */
   'deposit-released': LoanMail & { readonly deposit: (Amount & { readonly mode: 'hold' | 'charge' }) | null };
   'kit-set-aside': LoanMail & { readonly slots: readonly string[]; readonly deposit: Amount | null };
-  /** To second instructors and admins. */
+  /** To second instructors and admins: jars that want a second reader's readings or an admin's word. */
   'second-reading-wanted': LoanMail & { readonly slots: readonly string[] };
   /** The school proposes to keep something; nothing has moved yet. */
   'keep-proposed': LoanMail & { readonly kept: Amount; readonly released: Amount; readonly items: readonly KeptItem[]; readonly objectBy: string };

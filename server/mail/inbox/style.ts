@@ -22,7 +22,7 @@ a:focus-visible, summary:focus-visible, iframe:focus-visible { outline:3px solid
 .list .quiet { display:block; }
 .button { display:inline-block; min-height:52px; padding:13px 24px; border-radius:14px; background:var(--action); color:var(--onAction); text-decoration:none; font-weight:700; }
 dl { display:grid; grid-template-columns:max-content 1fr; gap:4px 14px; margin:0 0 14px; } dt { color:var(--soft); } dd { margin:0; overflow-wrap:anywhere; }
-iframe { width:100%; height:70vh; border:1px solid var(--rule); border-radius:14px; background:var(--ground); }
+iframe { width:100%; height:max(70vh, 700px); border:1px solid var(--rule); border-radius:14px; background:var(--ground); }
 details { margin-top:14px; } summary { min-height:44px; padding:10px 0; cursor:pointer; }
 pre { white-space:pre-wrap; overflow-wrap:anywhere; background:var(--sheet); border:1px solid var(--rule); border-radius:14px; padding:14px; font:14.5px/1.5 'Spline Sans Mono', ui-monospace, monospace; }
 @media (min-width:1000px) { .panes { display:grid; grid-template-columns:380px 1fr; } .panes nav { max-height:calc(100vh - 60px); overflow:auto; } }

@@ -16,7 +16,7 @@ export function kitSetAside(data: MailData['kit-set-aside'], { publicUrl, school
         ...(data.deposit ? [['Deposit', `${sayAmount(data.deposit)}, not decided`] as const] : []),
       ]),
       paragraph(`The bench check did not settle ${jars}. That is a statement about stones and readings: instruments slip, jars change places and readings are taken again every week.`),
-      paragraph('A second person now takes readings of their own. Nothing is kept from your deposit on one reading, and we write again as soon as people have decided.'),
+      paragraph('Where readings are in question, a second person now takes their own. Nothing is kept from your deposit on one reading, and we write again as soon as people have decided.'),
       paragraph('If something about the kit struck you while you had it, tell the desk: it helps.'),
     ],
     action: { label: 'See your loan', url: links(publicUrl).loan(data.loanId) },
@@ -26,12 +26,12 @@ export function kitSetAside(data: MailData['kit-set-aside'], { publicUrl, school
 
 export function secondReadingWanted(data: MailData['second-reading-wanted'], { publicUrl, school }: SchoolLetterContext): Letter {
   return {
-    subject: `Kit ${data.kit.kitNumber}: a second reading is wanted`,
-    heading: `A second reading is wanted for kit ${data.kit.kitNumber}`,
+    subject: `Kit ${data.kit.kitNumber} is set aside: a second person is wanted`,
+    heading: `A second person is wanted for kit ${data.kit.kitNumber}`,
     blocks: [
-      facts([['Kit', `Kit ${data.kit.kitNumber}`], ['To be read', sayJars(data.slots)]]),
-      paragraph('The kit is set aside. Somebody who has not read these stones in this check takes fresh readings; the record and the first readings stay closed until theirs are in.'),
-      paragraph('If you read them first, or borrowed this kit, leave it to a colleague.'),
+      facts([['Kit', `Kit ${data.kit.kitNumber}`], ['Open', sayJars(data.slots)]]),
+      paragraph('A stone that can be read wants the own readings of somebody who has not read it in this check; the record and the first readings stay closed until theirs are in. A missing or damaged stone wants an admin’s word, with a reason and a photo.'),
+      paragraph('If you read these stones first, or borrowed this kit, leave it to a colleague.'),
     ],
     action: { label: 'Open the bench', url: links(publicUrl).bench(data.loanId) },
     sender: school.name,

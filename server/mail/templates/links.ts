@@ -4,7 +4,7 @@ export function links(publicUrl: string) {
   return {
     loan: (loanId: string): string => `${base}/loans/${encodeURIComponent(loanId)}`,
     bench: (loanId: string): string => `${base}/bench/${encodeURIComponent(loanId)}`,
-    reset: (token: string): string => `${base}/reset?token=${encodeURIComponent(token)}`,
-    invitation: (token: string): string => `${base}/invitation?token=${encodeURIComponent(token)}`,
+    reset: (token: string): string => `${base}/reset/${encodeURIComponent(token)}`,
+    invitation: (token: string): string => `${base}/invitation/${encodeURIComponent(token)}`,
   };
 }

@@ -102,7 +102,7 @@ describe('details', () => {
 
   it('carries a reset link whose token survives the address', () => {
     const { text } = composeAccountMail('password-reset', { token: 'a+b/c=', expiresAt: '2026-12-01T12:30:00Z' }, { publicUrl: 'http://localhost:8080' });
-    expect(text).toContain('http://localhost:8080/reset?token=a%2Bb%2Fc%3D');
+    expect(text).toContain('http://localhost:8080/reset/a%2Bb%2Fc%3D');
     expect(text).toContain('until 1 December 2026, 12:30 UTC');
   });
 
