@@ -41,9 +41,8 @@ module.exports = {
       ...webPreset,
       displayName: 'web',
       testMatch: ['<rootDir>/tests/web/**/*.test.ts?(x)'],
-      moduleNameMapper: { ...webPreset.moduleNameMapper, ...aliases },
-      // d3 ships ES modules only.
-      transformIgnorePatterns: webPreset.transformIgnorePatterns.map((pattern) => pattern.replace('(?!(', '(?!(d3-|internmap|')),
+      // d3 is published as ES modules; each package also carries a build that Node can require.
+      moduleNameMapper: { ...webPreset.moduleNameMapper, ...aliases, '^(d3-[a-z-]+)$': '<rootDir>/node_modules/$1/dist/$1.js' },
       modulePathIgnorePatterns: ['<rootDir>/dist', '<rootDir>/.trayward'],
       setupFiles: [...(webPreset.setupFiles ?? []), '<rootDir>/tests/support/web/stubs.ts'],
       setupFilesAfterEnv: [...(webPreset.setupFilesAfterEnv ?? []), '<rootDir>/tests/support/web/matchers.ts'],

@@ -50,11 +50,15 @@ function Root({ children, error, hint = false, required = false }: FieldRootProp
   );
 }
 
-function Label({ children, optional, hidden }: { children: string; optional?: boolean; hidden?: boolean }) {
+/** `unit` is read aloud after the words; to the eye it stands after the value. */
+function Label({ children, unit, optional, hidden }: { children: string; unit?: string; optional?: boolean; hidden?: boolean }) {
   const { inputId } = useField();
   return (
     <label htmlFor={inputId} style={hidden ? unseen : undefined}>
-      <Text strong>{children}</Text>
+      <Text strong>
+        {children}
+        {unit ? <span style={unseen}>{`, ${unit}`}</span> : null}
+      </Text>
       {optional ? <Text tone="soft"> (if you like)</Text> : null}
     </label>
   );

@@ -2,6 +2,7 @@ import { useId, type KeyboardEvent } from 'react';
 import { Pressable, StyleSheet, View } from 'react-native';
 import { a, family, radius, size, space, type as typeOf, useTheme } from '@/components/theme';
 import { Button } from './Button';
+import { unseen } from './Field';
 import { Icon } from './Icon';
 import { Mono, Text } from './Text';
 
@@ -41,7 +42,10 @@ export function Keypad({ label, unit, value, onChange, onEnter, enterLabel, erro
   return (
     <View style={styles.pad}>
       <label htmlFor={id} style={{ display: 'block' }}>
-        <Text strong>{unit ? `${label}, ${unit}` : label}</Text>
+        <Text strong>
+          {label}
+          {unit ? <span style={unseen}>{`, ${unit}`}</span> : null}
+        </Text>
       </label>
       <View style={[styles.screen, { backgroundColor: t.colors.sheet, borderColor: error ? t.colors.different : t.colors.edge }]}>
         <input
