@@ -79,7 +79,7 @@ function sizeCases(record: PreparedRecord, body: BodyReadings, share: number, sp
   for (const attribute of SIZE_ATTRIBUTES) {
     const recorded = record.numbers[attribute];
     const pooled = body.sizes[attribute];
-    const variants = pooled?.variants ?? [{ blunders: 0, weight: 1, sound: null }];
+    const variants = pooled?.merged ?? [{ blunders: 0, weight: 1, sound: null }];
     const next: OpenCase[] = [];
     for (const variant of variants) {
       const part = sizePart(variant, recorded, pooled?.scale ?? 1, recorded && spread(attribute, recorded.value));
@@ -126,48 +126,67 @@ function sizePart(variant: Variant, recorded: RecordedNumber | undefined, scale:
   };
 }
 
-/** Probability of sizes, SG and weight together for one piece of a species: after SG, and after weight. */
-export function substituteBody(sizes: SubstituteSizes, body: BodyReadings, piece: Component): { afterSg: ByBlunders; afterWeight: ByBlunders } {
-  const sizesOnly = sizes.prefix[SIZE_ATTRIBUTES.length - 1] ?? ONE;
+/** Sizes, SG and weight together for one piece of a species: probability after SG, and after weight. */
+export interface PieceBody { readonly afterSg: ByBlunders; readonly afterWeight: ByBlunders }
+
+/** One explanation of the SG readings, and the piece's SG as it leaves it. */
+interface GravityCase { readonly blunders: number; readonly weight: number; readonly mean: number; readonly variance: number }
+
+const UNREAD: readonly Variant[] = [{ blunders: 0, weight: 1, sound: null }];
+
+function gravityCases(sg: PooledNumber | undefined, piece: Component): GravityCase[] {
   const prior = piece.uSg * piece.uSg;
-  const { sg, weight } = body;
-  const gravities = sg === undefined || sg.variants.length === 0
-    ? [{ blunders: 0, weight: 1, mean: piece.sg, variance: prior }]
-    : sg.variants.map(({ blunders, weight: odds, sound }) => {
-      if (sound === null) return { blunders, weight: odds, mean: piece.sg, variance: prior };
-      const gain = prior / (prior + sound.variance);
-      return {
-        blunders,
-        weight: odds * sg.scale * normalDensity(sound.mean - piece.sg, prior + sound.variance),
-        mean: piece.sg + gain * (sound.mean - piece.sg),
-        variance: (1 - gain) * prior,
-      };
-    });
-  const sgSums: [number, number, number] = [0, 0, 0];
-  for (const gravity of gravities) sgSums[gravity.blunders as 0 | 1 | 2] += gravity.weight;
-  const afterSg = times(sizesOnly, sgSums);
-  if (weight === undefined || weight.variants.length === 0) return { afterSg, afterWeight: afterSg };
+  const scale = sg?.scale ?? 1;
+  const variants = sg === undefined || sg.merged.length === 0 ? UNREAD : sg.merged;
+  return variants.map(({ blunders, weight, sound }) => {
+    if (sound === null) return { blunders, weight, mean: piece.sg, variance: prior };
+    const gain = prior / (prior + sound.variance);
+    return {
+      blunders,
+      weight: weight * scale * normalDensity(sound.mean - piece.sg, prior + sound.variance),
+      mean: piece.sg + gain * (sound.mean - piece.sg),
+      variance: (1 - gain) * prior,
+    };
+  });
+}
+
+export function substituteBody(sizes: SubstituteSizes, body: BodyReadings, piece: Component): PieceBody {
+  const sizesOnly = sizes.prefix[SIZE_ATTRIBUTES.length - 1] ?? ONE;
+  const gravities = gravityCases(body.sg, piece);
+  const { weight } = body;
+  let afterSg = sizesOnly;
+  if (body.sg !== undefined) {
+    const sums: [number, number, number] = [0, 0, 0];
+    for (const gravity of gravities) sums[gravity.blunders as 0 | 1 | 2] += gravity.weight;
+    afterSg = times(sizesOnly, sums);
+  }
+  if (weight === undefined || weight.merged.length === 0) return { afterSg, afterWeight: afterSg };
   const sums: [number, number, number] = [0, 0, 0];
-  for (const variant of weight.variants) {
+  for (const variant of weight.merged) {
     if (variant.sound === null) {
-      for (let b = 0; b + variant.blunders <= MAX_BLUNDERS; b += 1) sums[(b + variant.blunders) as 0 | 1 | 2] += (afterSg[b as 0 | 1 | 2]) * variant.weight;
-      continue;
-    }
-    const { mean, variance } = variant.sound;
-    for (const gravity of gravities) {
-      const odds = variant.weight * gravity.weight * weight.scale;
-      if (odds === 0) continue;
-      const spent = variant.blunders + gravity.blunders;
-      const relative = gravity.variance / (gravity.mean * gravity.mean);
-      for (const size of sizes.cases) {
-        const blunders = spent + size.blunders;
-        if (blunders > MAX_BLUNDERS) continue;
-        const expected = size.ctPerSg * gravity.mean;
-        sums[blunders as 0 | 1 | 2] += odds * size.weight * normalDensity(mean - expected, expected * expected * (size.variance + relative) + variance);
-      }
+      for (let b = 0; b + variant.blunders <= MAX_BLUNDERS; b += 1) sums[(b + variant.blunders) as 0 | 1 | 2] += afterSg[b as 0 | 1 | 2] * variant.weight;
+    } else {
+      for (const gravity of gravities) addWeight(sums, sizes.cases, gravity, variant, variant.sound, weight.scale);
     }
   }
   return { afterSg, afterWeight: sums };
+}
+
+/** Adds one explanation of weight and SG over all explanations of the sizes: the inner loop of every verdict. */
+function addWeight(
+  sums: [number, number, number], cases: readonly SizeCase[], gravity: GravityCase,
+  variant: Variant, { mean, variance }: NonNullable<Variant['sound']>, scale: number,
+): void {
+  const odds = variant.weight * gravity.weight * scale;
+  if (odds === 0) return;
+  const spent = variant.blunders + gravity.blunders;
+  const relative = gravity.variance / (gravity.mean * gravity.mean);
+  for (const size of cases) {
+    const blunders = spent + size.blunders;
+    if (blunders > MAX_BLUNDERS) continue;
+    const expected = size.ctPerSg * gravity.mean;
+    sums[blunders as 0 | 1 | 2] += odds * size.weight * normalDensity(mean - expected, expected * expected * (size.variance + relative) + variance);
+  }
 }
 
 /** Combined variance of a reading against the record; an instrument used at both visits repeats its offset, which cancels. */
@@ -182,7 +201,7 @@ export function ownDensity(record: PreparedRecord, attribute: NumericAttribute, 
   return (sound: NonNullable<Variant['sound']>): number => {
     const variance = comparedVariance(recorded, sound, pooled.instrument);
     const distance = sound.mean - recorded.value;
-    const noise = bell(record, distance, variance);
+    const noise = normalDensity(distance, variance);
     const losses: { share: number; mean: number; sign: 1 | -1 }[] = [];
     const { chips, damage } = record.settings;
     if (attribute === 'weight_ct') {
@@ -201,12 +220,6 @@ export function ownDensity(record: PreparedRecord, attribute: NumericAttribute, 
     }
     return pooled.scale * (density + rest * noise);
   };
-}
-
-/** Measurement noise: mostly the stated uncertainty, now and then wider. */
-function bell(record: PreparedRecord, distance: number, variance: number): number {
-  const { share, wide } = record.settings.tail;
-  return (1 - share) * normalDensity(distance, variance) + (share === 0 ? 0 : share * normalDensity(distance, wide * wide * variance));
 }
 
 /**

@@ -6,4 +6,5 @@ export { estimateRecord } from './estimate';
 export type { Estimate } from './estimate';
 export { recordGaps } from './gaps';
 export { MAX_READINGS, validateRecordedStone, validateVerdictRequest } from './validate';
-export { conformanceProbability, enScore, supportOf, twoLevelLR, zetaScore } from './scores';
+export { conformanceProbability, enScore, supportOf, twoLevelLR, weightMatchChance, zetaScore } from './scores';
+export { combinedU, rectangularU, resolutionU, triangularU } from './uncertainty';

@@ -1,6 +1,6 @@
-import type { Attribute, CategoryAttribute, CategoryReading, NumericAttribute, ReadingInput, RefractiveAttribute } from '../api/evidence';
+import type { Attribute, CategoryReading, NumericAttribute, ReadingInput, RefractiveAttribute } from '../api/evidence';
 import { ATTRIBUTES, REFRACTIVE_ATTRIBUTES } from '../api/evidence';
-import type { ByBlunders } from './body';
+import type { ByBlunders, PieceBody, SubstituteSizes } from './body';
 import { byBlunders, ONE, ownDensity, SIZE_ATTRIBUTES, substituteBody, substituteSizes, times, total } from './body';
 import type { Component } from './components';
 import { speciesModels } from './components';
@@ -32,17 +32,21 @@ export interface Likelihoods {
 }
 
 export function poolReadings(record: PreparedRecord, readings: readonly ReadingInput[]): PooledReadings {
-  const numbers: Partial<Record<NumericAttribute, PooledNumber>> = {};
-  const categories: Partial<Record<CategoryAttribute, readonly CategoryReading[]>> = {};
-  const present: Attribute[] = [];
-  for (const attribute of ATTRIBUTES) {
+  const pooled: PooledReadings = { numbers: {}, categories: {}, present: [] };
+  return ATTRIBUTES.reduce((sofar, attribute) => {
     const taken = readings.filter((reading) => reading.attribute === attribute);
-    if (taken.length === 0) continue;
-    present.push(attribute);
-    if (isCategory(attribute)) categories[attribute] = taken as CategoryReading[];
-    else numbers[attribute] = poolNumbers(attribute, taken, record.settings, blunderDensity(record, attribute, taken));
-  }
-  return { numbers, categories, present };
+    return taken.length === 0 ? sofar : withReadings(record, sofar, attribute, taken);
+  }, pooled);
+}
+
+/** The same readings with those of one attribute (all of them, earlier ones included) put in place. */
+export function withReadings(record: PreparedRecord, pooled: PooledReadings, attribute: Attribute, taken: readonly ReadingInput[]): PooledReadings {
+  const present = pooled.present.includes(attribute)
+    ? pooled.present
+    : ATTRIBUTES.filter((entry) => entry === attribute || pooled.present.includes(entry));
+  if (isCategory(attribute)) return { ...pooled, present, categories: { ...pooled.categories, [attribute]: taken as CategoryReading[] } };
+  const read = poolNumbers(attribute, taken, record.settings, blunderDensity(record, attribute, taken));
+  return { ...pooled, present, numbers: { ...pooled.numbers, [attribute]: read } };
 }
 
 /** Flat density of a blundered number, per unit of the attribute. */
@@ -54,14 +58,16 @@ function blunderDensity(record: PreparedRecord, attribute: NumericAttribute, rea
   return 1 / (span.timesValue * (own ?? read));
 }
 
-export function likelihoods(record: PreparedRecord, pooled: PooledReadings): Likelihoods {
-  return { present: pooled.present, own: ownLikelihoods(record, pooled), ...anotherLikelihoods(record, pooled) };
+/** `bodies` may be handed in where only optics, refraction or appearance changed since they were worked out. */
+export function likelihoods(record: PreparedRecord, pooled: PooledReadings, bodies = substituteBodies(record, pooled)): Likelihoods {
+  return { present: pooled.present, own: ownLikelihoods(record, pooled), ...anotherLikelihoods(record, pooled, bodies) };
 }
 
 function isRefractive(attribute: Attribute): attribute is RefractiveAttribute {
   return (REFRACTIVE_ATTRIBUTES as readonly Attribute[]).includes(attribute);
 }
 
+const APPEARANCE = ['uv_long', 'uv_short', 'pleochroism'] as const;
 const OPTICS: readonly Attribute[] = ['polariscope', 'optic_figure', 'optic_sign'];
 
 /** Under "the recorded stone" the attributes are independent about the record; what it lacks is left to the recorded species' pieces. */
@@ -133,45 +139,58 @@ function pickSizes(pooled: PooledReadings) {
   return { ...(length && { length_mm: length }), ...(width && { width_mm: width }), ...(height && { height_mm: height }) };
 }
 
-function anotherLikelihoods(record: PreparedRecord, pooled: PooledReadings): { another: number[]; bySpecies: number[] } {
-  const { present, numbers, categories } = pooled;
-  const body = { sizes: pickSizes(pooled), sg: numbers.sg, weight: numbers.weight_ct };
-  const refraction = refractionReadings(pooled, () => true);
+/** Body likelihoods of every piece of every species, kept so that a further optical reading need not weigh the stone again. */
+export interface SubstituteBodies { readonly sizes: SubstituteSizes; readonly pieces: readonly (readonly PieceBody[])[] }
+
+export function substituteBodies(record: PreparedRecord, { numbers, ...pooled }: PooledReadings): SubstituteBodies {
+  const body = { sizes: pickSizes({ numbers, ...pooled }), sg: numbers.sg, weight: numbers.weight_ct };
   const sizes = substituteSizes(record, body);
+  const pieces = speciesModels(record.settings).map(({ components }, k) => (
+    record.shares[k] === 0 ? [] : components.map((piece) => substituteBody(sizes, body, piece))));
+  return { sizes, pieces };
+}
+
+function anotherLikelihoods(record: PreparedRecord, pooled: PooledReadings, bodies: SubstituteBodies): { another: number[]; bySpecies: number[] } {
+  const { present, categories } = pooled;
+  const refraction = refractionReadings(pooled, () => true);
   const optics = substituteOptics(record, categories);
   const refractive = present.filter(isRefractive);
+  const appearances = APPEARANCE.filter((attribute) => categories[attribute] !== undefined);
+  const place = Object.fromEntries(present.map((attribute, i) => [attribute, i])) as Partial<Record<Attribute, number>>;
   const another = present.map((attribute) => {
     const i = (SIZE_ATTRIBUTES as readonly Attribute[]).indexOf(attribute);
-    return i < 0 ? 0 : total(sizes.prefix[i] ?? ONE);
+    return i < 0 ? 0 : total(bodies.sizes.prefix[i] ?? ONE);
   });
-  const add = (attribute: Attribute, amount: number) => {
-    const i = present.indexOf(attribute);
-    if (i >= 0) another[i] = (another[i] ?? 0) + amount;
+  const add = (at: number | undefined, amount: number) => {
+    if (at !== undefined) another[at] = (another[at] ?? 0) + amount;
   };
   const bySpecies = speciesModels(record.settings).map(({ row, components }, k) => {
     const share = record.shares[k] ?? 0;
     if (share === 0) return 0;
-    let sums: [number, number, number] = [0, 0, 0];
-    for (const piece of components) {
+    const sums: [number, number, number] = [0, 0, 0];
+    components.forEach((piece, j) => {
       const odds = share * piece.weight;
-      const { afterSg, afterWeight } = substituteBody(sizes, body, piece);
-      add('sg', odds * total(afterSg));
-      add('weight_ct', odds * total(afterWeight));
-      let running = afterWeight;
+      const found = bodies.pieces[k]?.[j];
+      if (found === undefined) return;
+      add(place.sg, odds * total(found.afterSg));
+      add(place.weight_ct, odds * total(found.afterWeight));
+      let running = found.afterWeight;
       for (const attribute of refractive) {
-        running = times(afterWeight, substituteRefraction(record, refraction, piece, attribute));
-        add(attribute, odds * total(running));
+        running = times(found.afterWeight, substituteRefraction(record, refraction, piece, attribute));
+        add(place[attribute], odds * total(running));
       }
-      sums = [sums[0] + odds * running[0], sums[1] + odds * running[1], sums[2] + odds * running[2]];
-    }
+      sums[0] += odds * running[0];
+      sums[1] += odds * running[1];
+      sums[2] += odds * running[2];
+    });
     const products = optics.of(row);
-    OPTICS.forEach((attribute, i) => { add(attribute, total(times(sums, products[i] ?? ONE))); });
+    OPTICS.forEach((attribute, i) => {
+      if (place[attribute] !== undefined) add(place[attribute], total(times(sums, products[i] ?? ONE)));
+    });
     let running = times(sums, products[2] ?? ONE);
-    for (const attribute of ['uv_long', 'uv_short', 'pleochroism'] as const) {
-      const taken = categories[attribute];
-      if (taken === undefined) continue;
-      running = times(running, appearanceChance(record, attribute, taken, row, false));
-      add(attribute, total(running));
+    for (const attribute of appearances) {
+      running = times(running, appearanceChance(record, attribute, categories[attribute] ?? [], row, false));
+      add(place[attribute], total(running));
     }
     return total(running);
   });

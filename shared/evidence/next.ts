@@ -1,4 +1,4 @@
-import type { Attribute, CategoryAttribute, NextReading, NumericAttribute, ReadingInput, VerdictRequest } from '../api/evidence';
+import type { Attribute, NextReading, NumericAttribute, ReadingInput, RefractiveAttribute, VerdictRequest } from '../api/evidence';
 import { ATTRIBUTES, CATEGORY_VALUES } from '../api/evidence';
 import { caresOf, isTransparentEnough } from '../gem/cares';
 import { ratioUncertainty } from '../gem/hydrostatic';
@@ -6,10 +6,11 @@ import { speciesModels } from './components';
 import type { Judgement } from './judge';
 import { isNumeric, judge } from './judge';
 import type { Likelihoods } from './likelihood';
-import { likelihoods, poolReadings } from './likelihood';
+import { likelihoods, poolReadings, substituteBodies, withReadings } from './likelihood';
 import { outcomeNodes } from './outcomes';
+import type { PooledNumber } from './pooling';
 import type { PreparedRecord } from './record';
-import { isCategory } from './settings';
+import { GROUP_OF, isCategory } from './settings';
 
 /** An attribute is not proposed again once it has been read this often: people decide then. */
 const MOST_READINGS_OF_ONE = 3;
@@ -17,6 +18,9 @@ const MOST_READINGS_OF_ONE = 3;
 const SMALLEST_SHARE = 1e-4;
 /** Below this chance of settling anything, readings are ranked by what they tell. */
 const SETTLES_SELDOM = 0.05;
+
+/** Limit of the usual contact liquid (from memory: Read, Gemmology). */
+const USUAL_LIMIT = 1.81;
 
 /** Standard uncertainties a school's instruments usually have; used for a test of which no reading says better. Common practice, no source. */
 const USUAL_U: Readonly<Record<NumericAttribute, number>> = {
@@ -34,8 +38,9 @@ export function rankNextReadings(record: PreparedRecord, request: VerdictRequest
   const exploring = withoutTheUnlikely(record, found);
   const { seconds, openSeconds, priorSwap } = record.settings;
   const belief = sigmoid(Math.log((1 - priorSwap) / priorSwap) + judgement.log10LR * Math.LN10);
+  const explore = explorer(exploring, request);
   const ranked = candidates(record, request).map((attribute): NextReading => {
-    const outcomes = outcomesOf(exploring, request, attribute);
+    const outcomes = explore(attribute);
     return {
       attribute,
       repeat: request.readings.some((reading) => reading.attribute === attribute),
@@ -73,27 +78,36 @@ function candidates(record: PreparedRecord, request: VerdictRequest): Attribute[
   });
 }
 
-function outcomesOf(record: PreparedRecord, request: VerdictRequest, attribute: Attribute): Outcome[] {
-  const look = (reading: ReadingInput, width: number): Outcome => {
-    const pooled = poolReadings(record, [...request.readings, reading]);
-    const found = likelihoods(record, pooled);
-    const judged = judge(record, pooled, found);
-    const last = found.own.length - 1;
-    return { own: width * (found.own[last] ?? 0), another: width * (found.another[last] ?? 0), log10LR: judged.log10LR, settled: judged.verdict !== 'not_settled' };
+/** Works out the outcomes of one further reading of an attribute; what the reading leaves unchanged is computed once for all. */
+function explorer(record: PreparedRecord, request: VerdictRequest): (attribute: Attribute) => Outcome[] {
+  const before = poolReadings(record, request.readings);
+  const bodiesBefore = substituteBodies(record, before);
+  return (attribute) => {
+    const earlier = request.readings.filter((reading) => reading.attribute === attribute);
+    const look = (reading: ReadingInput, width: number): Outcome => {
+      const pooled = withReadings(record, before, attribute, [...earlier, reading]);
+      const found = likelihoods(record, pooled, GROUP_OF[attribute] === 'body' ? undefined : bodiesBefore);
+      const judged = judge(record, pooled, found);
+      const last = found.own.length - 1;
+      return { own: width * (found.own[last] ?? 0), another: width * (found.another[last] ?? 0), log10LR: judged.log10LR, settled: judged.verdict !== 'not_settled' };
+    };
+    if (isCategory(attribute)) return CATEGORY_VALUES[attribute].map((value) => look({ attribute, value }, 1));
+    return isNumeric(attribute) ? numericOutcomes(record, attribute, before.numbers[attribute], earlier, look) : [];
   };
-  if (isCategory(attribute)) {
-    return CATEGORY_VALUES[attribute as CategoryAttribute].map((value) => look({ attribute, value }, 1));
-  }
-  if (!isNumeric(attribute)) return [];
-  const earlier = request.readings.filter((reading) => reading.attribute === attribute);
+}
+
+function numericOutcomes(
+  record: PreparedRecord, attribute: NumericAttribute, read: PooledNumber | undefined, earlier: readonly ReadingInput[],
+  look: (reading: ReadingInput, width: number) => Outcome,
+): Outcome[] {
   const u = usualU(record, attribute, earlier);
-  const limit = attribute.startsWith('ri_') ? 1.81 : Infinity;
-  const nodes = outcomeNodes(record, request, attribute, u).filter((value) => value > 0 && value < limit);
+  const limit = attribute.startsWith('ri_') ? USUAL_LIMIT : Infinity;
+  const nodes = outcomeNodes(record, attribute, read, u).filter((value) => value > 0 && value < limit);
   const outcomes = nodes.map((value, i) => {
     const width = ((nodes[i + 1] ?? value) - (nodes[i - 1] ?? value)) / 2 / u;
     return look({ attribute, value, u }, width);
   });
-  if (limit < Infinity && mayExceed(record, limit)) outcomes.push(look({ attribute: attribute as 'ri_spot', value: 'over_limit', limit }, 1));
+  if (limit < Infinity && mayExceed(record, limit)) outcomes.push(look({ attribute: attribute as RefractiveAttribute, value: 'over_limit', limit }, 1));
   return outcomes;
 }
 

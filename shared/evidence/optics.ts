@@ -1,5 +1,6 @@
 import type { CategoryAttribute, CategoryReading, Observer, OpticFigure, PolariscopeReaction } from '../api/evidence';
 import { CATEGORY_VALUES } from '../api/evidence';
+import { SPECIES_ROWS } from '../gem/species';
 import type { SpeciesRow } from '../gem/speciesRow';
 import type { ByBlunders } from './body';
 import { ONE, times } from './body';
@@ -36,8 +37,12 @@ const REACTIONS_BY_WORDS: Readonly<Record<string, Partial<Reactions>>> = {
   'DR or AGG (lamellar twinning)': { DR: 0.6, AGG: 0.4 },
 };
 
+const reactionsByRow = new Map<string, Reactions>(
+  SPECIES_ROWS.map(({ polariscope }) => [polariscope, { SR: 0, DR: 0, ADR: 0, AGG: 0, ...REACTIONS_BY_WORDS[polariscope] }]),
+);
+
 export function reactionsOf(row: SpeciesRow): Reactions {
-  return { SR: 0, DR: 0, ADR: 0, AGG: 0, ...REACTIONS_BY_WORDS[row.polariscope] };
+  return reactionsByRow.get(row.polariscope) ?? { SR: 0.25, DR: 0.25, ADR: 0.25, AGG: 0.25 };
 }
 
 /** The figure a doubly refractive stone of the species shows when one is found. */
@@ -144,6 +149,11 @@ export function ownOptics(record: PreparedRecord, readings: CategoryReadings): B
 export interface SubstituteOptics { of: (row: SpeciesRow) => ByBlunders[] }
 
 export function substituteOptics(record: PreparedRecord, readings: CategoryReadings): SubstituteOptics {
+  const { polariscope = [], optic_figure: figures = [], optic_sign: signs = [] } = readings;
+  const reactionOf = remembered((truth: PolariscopeReaction) => seriesChance(
+    record, polariscope, (reading) => reactionChance(record, truth, reading.value as PolariscopeReaction, observerOf(reading))));
+  const figureOfState = remembered((truth: OpticFigure | null) => seriesChance(record, figures, (reading) => figureChance(record, truth, reading)));
+  const signOf = remembered((truth: string | null) => seriesChance(record, signs, (reading) => signChance(record, truth, reading)));
   const known = new Map<string, ByBlunders[]>();
   return {
     of(row) {
@@ -152,18 +162,26 @@ export function substituteOptics(record: PreparedRecord, readings: CategoryReadi
       const found = known.get(key);
       if (found !== undefined) return found;
       const reactions = reactionsOf(row);
-      const built = mixStates(REACTIONS.filter((truth) => reactions[truth] > 0).map((truth) => ({
-        share: reactions[truth],
-        products: runningProducts(
-          record, readings,
-          (reading) => reactionChance(record, truth, reading.value as PolariscopeReaction, observerOf(reading)),
-          (reading) => figureChance(record, truth === 'DR' ? figure : null, reading),
-          (reading) => signChance(record, truth === 'DR' ? row.opticSign : null, reading),
-        ),
-      })));
+      const built = mixStates(REACTIONS.filter((truth) => reactions[truth] > 0).map((truth) => {
+        const first = reactionOf(truth);
+        const second = figures.length === 0 ? first : times(first, figureOfState(truth === 'DR' ? figure : null));
+        const third = signs.length === 0 ? second : times(second, signOf(truth === 'DR' ? row.opticSign : null));
+        return { share: reactions[truth], products: [first, second, third] };
+      }));
       known.set(key, built);
       return built;
     },
+  };
+}
+
+function remembered<K, V>(work: (key: K) => V): (key: K) => V {
+  const known = new Map<K, V>();
+  return (key) => {
+    const found = known.get(key);
+    if (found !== undefined) return found;
+    const value = work(key);
+    known.set(key, value);
+    return value;
   };
 }
 

@@ -1,7 +1,7 @@
-import type { NumericAttribute, RefractiveAttribute, VerdictRequest } from '../api/evidence';
+import type { NumericAttribute, RefractiveAttribute } from '../api/evidence';
 import { CT_PER_MM3 } from '../gem/cabochon';
 import { speciesModels } from './components';
-import { poolReadings } from './likelihood';
+import type { PooledNumber } from './pooling';
 import type { PreparedRecord } from './record';
 import { recordedInterval } from './refraction';
 
@@ -9,45 +9,46 @@ import { recordedInterval } from './refraction';
 interface Bell { mean: number; sd: number }
 
 /** Offsets of the nodes about a bell's mean, in standard deviations. */
-const FINE = [-4, -3, -2.5, -2, -1.5, -1, -0.5, 0, 0.5, 1, 1.5, 2, 2.5, 3, 4];
-const COARSE = [-2.2, -1.2, -0.4, 0.4, 1.2, 2.2];
-const MOST_PIECES = 5;
+const FINE = [-3.3, -2.6, -2, -1.5, -1, -0.5, 0, 0.5, 1, 1.5, 2, 2.6, 3.3];
+const COARSE = [-2.2, -0.9, 0, 0.9, 2.2];
+const MOST_PIECES = 3;
+/** Nodes closer together than this, in u of the reading, add nothing. */
+const CLOSEST = 0.2;
 
 /**
  * Values at which the outcomes of one further numeric reading are examined: finely about where the recorded stone would
  * read, coarsely wherever a likely substitute would. Sorted, without near duplicates; integrated by the trapezoid rule.
  */
-export function outcomeNodes(record: PreparedRecord, request: VerdictRequest, attribute: NumericAttribute, u: number): number[] {
-  const fine = ownBells(record, request, attribute, u);
-  const coarse = [...substituteBells(record, attribute, u), ...readBells(request, attribute, u)];
+export function outcomeNodes(record: PreparedRecord, attribute: NumericAttribute, read: PooledNumber | undefined, u: number): number[] {
+  const fine = ownBells(record, attribute, read, u);
+  const coarse = [...substituteBells(record, attribute, u), ...readBells(read, u)];
   const nodes = [
     ...fine.flatMap(({ mean, sd }) => FINE.map((offset) => mean + offset * sd)),
     ...coarse.flatMap(({ mean, sd }) => COARSE.map((offset) => mean + offset * sd)),
   ].sort((a, b) => a - b);
-  return nodes.filter((value, i) => i === 0 || value - (nodes[i - 1] ?? value) > 0.05 * u);
+  return nodes.filter((value, i) => i === 0 || value - (nodes[i - 1] ?? value) > CLOSEST * u);
 }
 
 /** Where the recorded stone would read: its record and the readings so far, weighed by their certainty. */
-function ownBells(record: PreparedRecord, request: VerdictRequest, attribute: NumericAttribute, u: number): Bell[] {
+function ownBells(record: PreparedRecord, attribute: NumericAttribute, read: PooledNumber | undefined, u: number): Bell[] {
   const recorded = record.numbers[attribute];
   if (recorded === undefined) {
     const interval = attribute.startsWith('ri_') ? recordedInterval(record, attribute as RefractiveAttribute) : null;
     if (interval === null) return [];
     return [{ mean: (interval.low + interval.high) / 2, sd: Math.hypot((interval.high - interval.low) / 2, interval.ends.u, u) }];
   }
-  const read = poolReadings(record, request.readings.filter((reading) => reading.attribute === attribute)).numbers[attribute];
   const split = attribute === 'ri_spot' ? record.birefringence : 0;
   if (read === undefined || read.reads.length === 0) return [{ mean: recorded.value, sd: Math.hypot(recorded.u, u, split / 2) }];
   const trust = recorded.u ** 2 / (recorded.u ** 2 + read.u ** 2);
-  return [
-    { mean: recorded.value + trust * (read.mean - recorded.value), sd: Math.hypot(Math.sqrt(trust) * read.u, u) },
-    { mean: recorded.value, sd: Math.hypot(recorded.u, u, split / 2) },
-  ];
+  const about = { mean: recorded.value + trust * (read.mean - recorded.value), sd: Math.hypot(Math.sqrt(trust) * read.u, u) };
+  // A reading far off may be a blunder: then the stone would read about its record again.
+  const far = Math.abs(read.mean - recorded.value) > 2 * Math.hypot(recorded.u, read.u);
+  return far ? [about, { mean: recorded.value, sd: Math.hypot(recorded.u, u, split / 2) }] : [about];
 }
 
 /** Where the stone in hand would read again, whichever stone it is. */
-function readBells(request: VerdictRequest, attribute: NumericAttribute, u: number): Bell[] {
-  return request.readings.flatMap((reading) => (reading.attribute === attribute && 'u' in reading ? [{ mean: reading.value, sd: Math.hypot(reading.u, u) }] : []));
+function readBells(read: PooledNumber | undefined, u: number): Bell[] {
+  return (read?.reads ?? []).map(({ value, u: earlier }) => ({ mean: value, sd: Math.hypot(earlier, u) }));
 }
 
 function substituteBells(record: PreparedRecord, attribute: NumericAttribute, u: number): Bell[] {

@@ -35,12 +35,16 @@ export interface PooledNumber {
   readonly damaged: boolean;
   readonly scale: number;
   readonly variants: readonly Variant[];
+  /** The same with ordinary and rough readings taken together: enough where the true value is uncertain anyway. */
+  readonly merged: readonly Variant[];
 }
 
 /** At most two blunders are considered at once: three slips on one stone are a matter for people. */
 export const MAX_BLUNDERS = 2;
 /** With more repeats than this only the outlying ones are suspected, or the patterns would outgrow the bench. */
 const MAX_SUSPECTS = 8;
+/** Pairs of rough readings are considered up to this many repeats, single ones beyond. */
+const MAX_ROUGH_PAIRS = 3;
 
 /** The number a reading stands for; SG weighings are turned into SG. */
 export function toNumberRead(reading: NumberReading | WeighingReading, settings: EngineSettings): NumberRead {
@@ -69,7 +73,7 @@ export function poolNumbers(
   reads.sort((a, b) => a.value - b.value || a.u - b.u);
   const scale = reads.reduce((largest, read) => Math.max(largest, read.u), 0);
   const all = combine(reads);
-  const rate = settings.blunderRate;
+  const patterns = reads.length === 0 ? [] : patternsOf(reads, scale, settings, settings.blunderRate * blunderDensity * scale);
   return {
     attribute, reads, over, scale,
     mean: all.mean,
@@ -77,7 +81,8 @@ export function poolNumbers(
     instrument: sharedInstrument(reads),
     uInstrument: Math.sqrt(all.instrumentVariance),
     damaged: reads.some((read) => read.damaged),
-    variants: reads.length === 0 ? [] : variantsOf(reads, scale, rate, rate * blunderDensity * scale),
+    variants: patterns.flat(),
+    merged: patterns.map(merge),
   };
 }
 
@@ -86,20 +91,47 @@ function sharedInstrument(reads: readonly NumberRead[]): string | null {
   return reads.every((read) => read.instrument === first) ? first : null;
 }
 
-function variantsOf(reads: readonly NumberRead[], scale: number, rate: number, blundered: number): Variant[] {
-  const suspects = suspectIndices(reads);
-  const patterns: number[][] = [[]];
-  suspects.forEach((a, i) => {
-    patterns.push([a]);
-    for (const b of suspects.slice(i + 1)) patterns.push([a, b]);
+/** Subsets of up to two of the given indices, the empty one first. */
+function subsets(indices: readonly number[], most: number): number[][] {
+  const found: number[][] = [[]];
+  indices.forEach((a, i) => {
+    found.push([a]);
+    if (most > 1) for (const b of indices.slice(i + 1)) found.push([a, b]);
   });
-  return patterns.map((pattern) => {
+  return found;
+}
+
+/** For each choice of blunders, every choice of rough readings among the rest: noise is a little heavier-tailed than a bell. */
+function patternsOf(reads: readonly NumberRead[], scale: number, { blunderRate, tail }: EngineSettings, blundered: number): Variant[][] {
+  return subsets(suspectIndices(reads), MAX_BLUNDERS).map((pattern) => {
     const rest = reads.filter((_, i) => !pattern.includes(i));
-    const weight = blundered ** pattern.length * (1 - rate) ** rest.length;
-    if (rest.length === 0) return { blunders: pattern.length, weight, sound: null };
-    const { mean, variance, instrumentVariance, agreement } = combine(rest, scale);
-    return { blunders: pattern.length, weight: weight * agreement, sound: { mean, variance, instrumentVariance } };
+    const odds = blundered ** pattern.length * (1 - blunderRate) ** rest.length;
+    if (rest.length === 0) return [{ blunders: pattern.length, weight: odds, sound: null }];
+    return subsets(rest.map((_, i) => i), rest.length > MAX_ROUGH_PAIRS ? 1 : 2).map((rough) => {
+      const { mean, variance, instrumentVariance, agreement } = combine(rest, scale, rough, tail.wide);
+      const weight = odds * agreement * tail.share ** rough.length * (1 - tail.share) ** (rest.length - rough.length);
+      return { blunders: pattern.length, weight, sound: { mean, variance, instrumentVariance } };
+    });
   });
+}
+
+/** One bell with the weight, mean and spread of several. */
+function merge(variants: readonly Variant[]): Variant {
+  const [first] = variants;
+  if (first === undefined || first.sound === null) return first ?? { blunders: 0, weight: 1, sound: null };
+  let weight = 0;
+  let mean = 0;
+  for (const variant of variants) {
+    weight += variant.weight;
+    mean += variant.weight * (variant.sound?.mean ?? 0);
+  }
+  if (!(weight > 0)) return first;
+  mean /= weight;
+  let variance = 0;
+  for (const variant of variants) {
+    if (variant.sound) variance += (variant.weight / weight) * (variant.sound.variance + (variant.sound.mean - mean) ** 2);
+  }
+  return { blunders: first.blunders, weight, sound: { mean, variance, instrumentVariance: first.sound.instrumentVariance } };
 }
 
 function suspectIndices(reads: readonly NumberRead[]): number[] {
@@ -114,11 +146,14 @@ function suspectIndices(reads: readonly NumberRead[]): number[] {
  * Weighted mean of repeated readings. Their own scatter shrinks with their number; the instrument's part does not.
  * `agreement` is the density of their scatter about the mean, in units of `scale`.
  */
-function combine(reads: readonly NumberRead[], scale = 1) {
+function combine(reads: readonly NumberRead[], scale = 1, rough: readonly number[] = [], wide = 1) {
   let precision = 0;
   let weighted = 0;
   let instrumentVariance = 0;
-  const own = reads.map((read) => Math.max(read.u * read.u - read.uInstrument * read.uInstrument, 1e-6 * read.u * read.u));
+  const own = reads.map((read, i) => {
+    const variance = Math.max(read.u * read.u - read.uInstrument * read.uInstrument, 1e-6 * read.u * read.u);
+    return rough.includes(i) ? wide * wide * variance : variance;
+  });
   reads.forEach((read, i) => {
     const w = 1 / (own[i] ?? 1);
     precision += w;

@@ -152,7 +152,21 @@ const NEAR_COLOURS: Readonly<Record<StoneColour, readonly StoneColour[]>> = {
   blue: ['green', 'violet'], violet: ['blue', 'pink'],
 };
 
-function substituteShares(stone: RecordedStone, own: SpeciesModel, settings: EngineSettings): number[] {
+const sharesKnown = new WeakMap<EngineSettings, Map<string, readonly number[]>>();
+
+/** Shares depend on species and colour alone; a school's kits ask for few of them, many times. */
+function substituteShares(stone: RecordedStone, own: SpeciesModel, settings: EngineSettings): readonly number[] {
+  const known = sharesKnown.get(settings) ?? new Map<string, readonly number[]>();
+  sharesKnown.set(settings, known);
+  const key = `${own.row.id}|${stone.colour ?? ''}`;
+  const found = known.get(key);
+  if (found !== undefined) return found;
+  const shares = workOutShares(stone, own, settings);
+  known.set(key, shares);
+  return shares;
+}
+
+function workOutShares(stone: RecordedStone, own: SpeciesModel, settings: EngineSettings): number[] {
   const { substitutes } = settings;
   const colours: readonly StoneColour[] = stone.colour === undefined ? own.row.colours : [stone.colour];
   const near = colours.flatMap((colour) => NEAR_COLOURS[colour]);

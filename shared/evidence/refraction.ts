@@ -87,10 +87,10 @@ export function substituteRefraction(record: PreparedRecord, readings: Refractio
       const p = chanceAbove(liquidLimit(pooled), low, high, Math.hypot(piece.uIndex, U_LIMIT));
       censored = times(censored, overVariants(record, pooled, p));
     }
-    if (pooled.variants.length === 0) continue;
+    if (pooled.merged.length === 0) continue;
     const next: Open[] = [];
     for (const entry of open) {
-      for (const variant of pooled.variants) {
+      for (const variant of pooled.merged) {
         const blunders = entry.blunders + variant.blunders;
         if (blunders > MAX_BLUNDERS) continue;
         const { sound } = variant;

@@ -48,3 +48,15 @@ function supportWord(size: number): SupportWord {
   if (size >= 1) return 'moderate';
   return size >= Math.log10(2) ? 'weak' : 'no support';
 }
+
+/**
+ * Chance that another cabochon of one species and calibrated size weighs within `deltaCt` of a given one:
+ * 2Φ(δ / (σ_m √2)) − 1, with σ_m to first order from the spreads of length, width, depth and SG.
+ * Depth dominates, and its spread is an assumption.
+ */
+export function weightMatchChance(
+  { weightCt, deltaCt, parts }: { weightCt: number; deltaCt: number; parts: readonly { value: number; sd: number }[] },
+): number {
+  const relative = Math.hypot(...parts.map(({ value, sd }) => sd / value));
+  return 2 * normalCdf(deltaCt / (weightCt * relative * Math.SQRT2)) - 1;
+}
