@@ -6,6 +6,8 @@ import { Mono, Text } from './Text';
 
 interface FieldContext {
   inputId: string;
+  labelId: string;
+  unitId: string;
   hintId: string;
   errorId: string;
   required: boolean;
@@ -44,20 +46,18 @@ export interface FieldRootProps {
 function Root({ children, error, hint = false, required = false }: FieldRootProps) {
   const id = useId();
   return (
-    <Context.Provider value={{ inputId: `${id}i`, hintId: `${id}h`, errorId: `${id}e`, required, hint, error }}>
+    <Context.Provider value={{ inputId: `${id}i`, labelId: `${id}l`, unitId: `${id}u`, hintId: `${id}h`, errorId: `${id}e`, required, hint, error }}>
       <View style={styles.root}>{children}</View>
     </Context.Provider>
   );
 }
 
-/** `unit` is read aloud after the words; to the eye it stands after the value. */
-function Label({ children, unit, optional, hidden }: { children: string; unit?: string; optional?: boolean; hidden?: boolean }) {
-  const { inputId } = useField();
+function Label({ children, optional, hidden }: { children: string; optional?: boolean; hidden?: boolean }) {
+  const { inputId, labelId } = useField();
   return (
     <label htmlFor={inputId} style={hidden ? unseen : undefined}>
-      <Text strong>
+      <Text strong id={labelId}>
         {children}
-        {unit ? <span style={unseen}>{`, ${unit}`}</span> : null}
       </Text>
       {optional ? <Text tone="soft"> (if you like)</Text> : null}
     </label>
@@ -93,7 +93,7 @@ export interface FieldInputProps extends Pick<TextInputProps, 'value' | 'onChang
   mono?: boolean;
   /** Lines shown; more than one makes a larger box. */
   lines?: number;
-  /** Written after the value: ct, mm, €. */
+  /** Written after the value and read aloud after the label: ct, mm, €. */
   unit?: string;
   ref?: React.Ref<TextInput>;
 }
@@ -101,13 +101,14 @@ export interface FieldInputProps extends Pick<TextInputProps, 'value' | 'onChang
 function Input({ mono, lines = 1, unit, ...rest }: FieldInputProps) {
   const t = useTheme();
   const attributes = useFieldAttributes();
-  const { error } = useField();
+  const { error, labelId, unitId } = useField();
   const many = lines > 1;
   return (
     <View style={styles.inputRow}>
       <TextInput
         {...rest}
         {...attributes}
+        {...(unit ? { 'aria-labelledby': `${labelId} ${unitId}` } : {})}
         {...(many ? { multiline: true, rows: lines } : {})}
         placeholderTextColor={t.colors.soft}
         style={[
@@ -119,7 +120,7 @@ function Input({ mono, lines = 1, unit, ...rest }: FieldInputProps) {
         ]}
       />
       {unit ? (
-        <Mono tone="soft" aria-hidden>
+        <Mono tone="soft" id={unitId}>
           {unit}
         </Mono>
       ) : null}

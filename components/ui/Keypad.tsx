@@ -2,7 +2,6 @@ import { useId, type KeyboardEvent } from 'react';
 import { Pressable, StyleSheet, View } from 'react-native';
 import { a, family, radius, size, space, type as typeOf, useTheme } from '@/components/theme';
 import { Button } from './Button';
-import { unseen } from './Field';
 import { Icon } from './Icon';
 import { Mono, Text } from './Text';
 
@@ -42,9 +41,8 @@ export function Keypad({ label, unit, value, onChange, onEnter, enterLabel, erro
   return (
     <View style={styles.pad}>
       <label htmlFor={id} style={{ display: 'block' }}>
-        <Text strong>
+        <Text strong id={`${id}l`}>
           {label}
-          {unit ? <span style={unseen}>{`, ${unit}`}</span> : null}
         </Text>
       </label>
       <View style={[styles.screen, { backgroundColor: t.colors.sheet, borderColor: error ? t.colors.different : t.colors.edge }]}>
@@ -54,6 +52,7 @@ export function Keypad({ label, unit, value, onChange, onEnter, enterLabel, erro
           inputMode="none"
           autoComplete="off"
           autoFocus={autoFocus}
+          aria-labelledby={unit ? `${id}l ${id}u` : undefined}
           aria-invalid={error !== undefined}
           aria-describedby={error || hint ? `${id}d` : undefined}
           onChange={(event) => onChange(cleaned(event.target.value, mostDigits))}
@@ -65,7 +64,7 @@ export function Keypad({ label, unit, value, onChange, onEnter, enterLabel, erro
           style={{ ...input, fontFamily: family.mono, color: t.colors.ink }}
         />
         {unit ? (
-          <Mono tone="soft" aria-hidden>
+          <Mono tone="soft" id={`${id}u`}>
             {unit}
           </Mono>
         ) : null}

@@ -7,16 +7,15 @@ export interface LabelledProps {
   error?: string | undefined;
   required?: boolean;
   optional?: boolean;
-  unit?: string | undefined;
   /** The label is read aloud but not shown; only where the words stand beside it anyway. */
   labelHidden?: boolean;
 }
 
 /** Label, hint, control, error: in that order for eyes and for screen readers. */
-export function Labelled({ label, unit, hint, error, required, optional, labelHidden, children }: LabelledProps & { children: ReactNode }) {
+export function Labelled({ label, hint, error, required, optional, labelHidden, children }: LabelledProps & { children: ReactNode }) {
   return (
     <Field.Root error={error} hint={hint !== undefined} {...(required ? { required } : {})}>
-      <Field.Label {...(unit ? { unit } : {})} {...(optional ? { optional } : {})} {...(labelHidden ? { hidden: true } : {})}>
+      <Field.Label {...(optional ? { optional } : {})} {...(labelHidden ? { hidden: true } : {})}>
         {label}
       </Field.Label>
       {hint !== undefined ? <Field.Hint>{hint}</Field.Hint> : null}
@@ -26,12 +25,12 @@ export function Labelled({ label, unit, hint, error, required, optional, labelHi
   );
 }
 
-type TextFieldProps = LabelledProps & Omit<FieldInputProps, 'value' | 'onChangeText' | 'unit'> & { value: string; onChange: (value: string) => void };
+type TextFieldProps = LabelledProps & Omit<FieldInputProps, 'value' | 'onChangeText'> & { value: string; onChange: (value: string) => void };
 
-export function TextField({ label, unit, hint, error, required, optional, labelHidden, onChange, ...input }: TextFieldProps) {
+export function TextField({ label, hint, error, required, optional, labelHidden, onChange, ...input }: TextFieldProps) {
   return (
-    <Labelled {...pickLabelled({ label, unit, hint, error, required, optional, labelHidden })}>
-      <Field.Input {...input} {...(unit ? { unit } : {})} onChangeText={onChange} />
+    <Labelled {...pickLabelled({ label, hint, error, required, optional, labelHidden })}>
+      <Field.Input {...input} onChangeText={onChange} />
     </Labelled>
   );
 }
@@ -40,12 +39,11 @@ export function TextField({ label, unit, hint, error, required, optional, labelH
  * A number as people type it, comma or point. `value` is the text, so that "1." can be on its way to "1.5";
  * read it with `parseNumber`.
  */
-export function NumberField({ label, unit, hint, error, required, optional, labelHidden, onChange, ...input }: TextFieldProps) {
+export function NumberField({ label, hint, error, required, optional, labelHidden, onChange, ...input }: TextFieldProps) {
   return (
-    <Labelled {...pickLabelled({ label, unit, hint, error, required, optional, labelHidden })}>
+    <Labelled {...pickLabelled({ label, hint, error, required, optional, labelHidden })}>
       <Field.Input
         {...input}
-        {...(unit ? { unit } : {})}
         mono
         inputMode="decimal"
         autoComplete="off"

@@ -21,3 +21,9 @@ export function parseMoney(text: string, currency: string): ParsedMoney {
   const amountMinor = Number(`${match[1] ?? '0'}${fraction.padEnd(digits, '0')}`);
   return Number.isSafeInteger(amountMinor) ? { ok: true, amountMinor } : { ok: false, reason: 'too_large' };
 }
+
+/** "60.00" for 6000 EUR: the amount alone, as it is typed back into a field. */
+export function formatMinor(amountMinor: number, currency: string): string {
+  const digits = minorDigits(currency);
+  return (amountMinor / 10 ** digits).toFixed(digits);
+}

@@ -115,9 +115,13 @@ export async function endByAdmin(
   await advance(tx, loanId, by.accountId, by.now);
 }
 
+/** A photo of the stone taken since it came back. */
 async function hasDamagePhoto(tx: EntityManager, loanId: string, stoneId: string): Promise<boolean> {
   const rows = await tx.query<unknown[]>(
-    'SELECT 1 FROM photo WHERE stone_id = $2 AND loan_id = $1 AND removed_at IS NULL LIMIT 1', [loanId, stoneId]);
+    `SELECT 1 FROM photo p JOIN loan l ON l.id = $1
+      WHERE p.stone_id = $2 AND p.removed_at IS NULL AND p.created_at >= l.returned_at LIMIT 1`,
+    [loanId, stoneId],
+  );
   return rows.length > 0;
 }
 

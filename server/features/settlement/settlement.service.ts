@@ -114,6 +114,7 @@ async function mailKept(tx: EntityManager, loan: Loan, view: SettlementView, ite
     }),
     objectBy: new Date(now.getTime() + row.days * dayMs).toISOString(),
   };
-  const dedupeKey = template === 'deposit-settled' ? `deposit-settled:${loan.id}` : `keep-proposed:${loan.id}:${now.getTime()}`;
-  await queueMail(tx, { schoolId: loan.schoolId, toAccountId: loan.borrowerId, template, dedupeKey, data });
+  const to = { schoolId: loan.schoolId, toAccountId: loan.borrowerId, data };
+  if (template === 'deposit-settled') await queueMail(tx, { ...to, template, dedupeKey: `deposit-settled:${loan.id}` });
+  else await queueMail(tx, { ...to, template, dedupeKey: `keep-proposed:${loan.id}:${now.getTime()}` });
 }

@@ -1,0 +1,1 @@
+export { NewStoneScreen as default } from '@/components/catalogue/NewStoneScreen';

@@ -1,0 +1,1 @@
+export { NewKitScreen as default } from '@/components/catalogue/NewKitScreen';

@@ -1,0 +1,1 @@
+export { StoneScreen as default } from '@/components/catalogue/StoneScreen';
