@@ -11,6 +11,7 @@ export function taskList(deps: JobDeps): TaskList {
   return Object.fromEntries(names.map((name) => [name, (payload: unknown, helpers: JobHelpers) => perform(name, payload, helpers, deps)]));
 }
 
+// eslint-disable-next-line @typescript-eslint/no-unnecessary-type-parameters -- N ties the job's payload to its handler
 async function perform<N extends JobName>(name: N, raw: unknown, helpers: JobHelpers, deps: JobDeps): Promise<void> {
   const { job } = helpers;
   const handler: JobHandler<JobPayload<N>> = tasks[name];

@@ -9,7 +9,7 @@ export function workerLogger(log?: Pino): Logger {
   return new Logger(() => (level, message, meta) => {
     if (meta?.['failure'] === true) return;
     const line = message.split('\n', 1)[0] ?? '';
-    if (level === 'error') log?.error({ from: 'queue' }, line);
-    else if (level === 'warning') log?.warn({ from: 'queue' }, line);
+    if (String(level) === 'error') log?.error({ from: 'queue' }, line);
+    else if (String(level) === 'warning') log?.warn({ from: 'queue' }, line);
   });
 }

@@ -74,6 +74,10 @@ export interface MailData {
   'payment-too-late': LoanMail & { readonly deposit: Amount & { readonly mode: 'hold' | 'charge' } };
   /** A hold that was about to lapse was charged whole, so that the check can be finished. Not a keep. */
   'hold-secured': LoanMail & { readonly deposit: Amount };
+  /** To admins: a jar was not there at take-out, and the kit is set aside. */
+  'jar-absent': LoanMail & { readonly slots: readonly string[] };
+  /** To admins: a borrower objects to what is, or is meant to be, kept. */
+  'objection-made': LoanMail;
   'loan-cancelled': LoanMail & { readonly reason: 'by_student' | 'by_staff' | 'abandoned' | 'jar_absent'; readonly absentSlots?: readonly string[] };
 }
 

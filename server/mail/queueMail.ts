@@ -4,7 +4,7 @@ import { enqueue } from '@/server/jobs/enqueue';
 import type { AccountMailTemplate, MailData, SchoolMailTemplate } from './mailData';
 
 /** An account, or an address that has no account yet (an invitation). */
-type Addressee = { readonly toAccountId: string; readonly toEmail?: never } | { readonly toEmail: string; readonly toAccountId?: never };
+type Addressee = { readonly toAccountId: string } | { readonly toEmail: string };
 
 /** Mail of a school; `tx` is a unit of work of that school. */
 type SchoolMail = {
@@ -29,8 +29,8 @@ export type MailRequest = (SchoolMail | AccountMail) & {
  */
 export async function queueMail(tx: EntityManager, mail: MailRequest): Promise<boolean> {
   const schoolId = mail.schoolId ?? null;
-  const accountId = mail.toAccountId ?? null;
-  const email = 'toEmail' in mail ? (mail.toEmail?.toLowerCase() ?? null) : null;
+  const accountId = 'toAccountId' in mail ? mail.toAccountId : null;
+  const email = 'toEmail' in mail ? mail.toEmail.toLowerCase() : null;
   const addressee = accountId ?? createHash('sha256').update(email ?? '').digest('base64url');
   const id = randomUUID();
   const made: unknown[] = await tx.query(

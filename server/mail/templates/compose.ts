@@ -1,5 +1,6 @@
 import type { AccountMailTemplate, MailData, SchoolMailTemplate } from '../mailData';
 import { invitation, passwordReset } from './accountLetters';
+import { jarAbsent, objectionMade } from './adminLetters';
 import { depositReleased, kitSetAside, secondReadingWanted } from './checkLetters';
 import type { LetterContext, SchoolLetterContext } from './context';
 import { type Letter, paragraph } from './letter';
@@ -20,6 +21,8 @@ const schoolLetters: { readonly [T in SchoolMailTemplate]: (data: MailData[T], c
   'payment-too-late': paymentTooLate,
   'hold-secured': holdSecured,
   'loan-cancelled': loanCancelled,
+  'jar-absent': jarAbsent,
+  'objection-made': objectionMade,
 };
 
 const accountLetters: { readonly [T in AccountMailTemplate]: (data: MailData[T], context: LetterContext) => Letter } = {

@@ -33,8 +33,9 @@ async function work(deps: TestJobDeps, sweeps = false): Promise<JobRunner> {
   return runner;
 }
 
-const queued = (): Promise<{ task_identifier: string; attempts: number; max_attempts: number; last_error: string | null }[]> =>
-  inDatabase(database.superuserUrl, async (client) => (await client.query('SELECT * FROM graphile_worker.jobs ORDER BY id')).rows);
+interface JobRow { task_identifier: string; attempts: number; max_attempts: number; last_error: string | null }
+const queued = (): Promise<JobRow[]> =>
+  inDatabase(database.superuserUrl, async (client) => (await client.query<JobRow>('SELECT * FROM graphile_worker.jobs ORDER BY id')).rows);
 
 function mailTo(tx: Parameters<typeof queueMail>[0], dedupeKey: string): Promise<boolean> {
   return queueMail(tx, {
@@ -119,7 +120,7 @@ test('a job that is in the hands of a living worker is left to it', async () => 
   const slow = testJobDeps(db);
   let letGo = (): void => undefined;
   const held = new Promise<void>((resolve) => { letGo = resolve; });
-  const living = await startRunner({ queueUrl: database.queueUrl, sweeps: false, deps: { ...slow, mail: { ...slow.mail, close: () => slow.mail.close(), send: () => held } } });
+  const living = await startRunner({ queueUrl: database.queueUrl, sweeps: false, deps: { ...slow, mail: { close: () => slow.mail.close(), send: () => held } } });
   runners.push(living);
   await until('the job to be taken', async () => (await queued()).some((job) => job.attempts === 1));
   await inDatabase(database.queueUrl, (client) => client.query(`UPDATE graphile_worker._private_jobs SET locked_at = now() - interval '1 minute'`));

@@ -49,7 +49,7 @@ test('a mail is sent to the account’s address under a stable Message-ID, and m
   const deps = testJobDeps(db);
   await work(deps);
   await until('the mark', async () => (await rows('plain'))[0]?.state === 'sent');
-  expect(deps.mail.sent).toEqual([expect.objectContaining({ to: school.studentEmail, subject: 'Kit 014 is in the return box', messageId: expect.stringMatching(/^<[0-9a-f-]{36}@lend\.portellery\.example>$/) })]);
+  expect(deps.mail.sent).toEqual([expect.objectContaining({ to: school.studentEmail, subject: 'Kit 014 is in the return box', messageId: expect.stringMatching(/^<[0-9a-f-]{36}@lend\.portellery\.example>$/) as string })]);
   expect((await rows('plain'))[0]?.sent_at).not.toBeNull();
 });
 

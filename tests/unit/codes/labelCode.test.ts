@@ -31,7 +31,7 @@ describe('a label code', () => {
   it('has twelve characters of the alphabet and passes its own check', () => {
     for (const code of codes) {
       expect(code).toHaveLength(LABEL_CODE_LENGTH);
-      expect([...code].every((character) => LABEL_ALPHABET.includes(character))).toBe(true);
+      expect(Array.from(code).every((character) => LABEL_ALPHABET.includes(character))).toBe(true);
       expect(parseLabelCode(code)).toEqual({ code });
     }
   });

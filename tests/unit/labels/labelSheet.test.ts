@@ -41,7 +41,7 @@ describe.each(everySheet)('the grid of %s, %s', (page, size) => {
   it.each([0, -1, 1.5, Number.NaN, labelsPerSheet(layout) + 1])('refuses to begin at %p, and says which places there are', async (startAt) => {
     const making = makeLabelSheet({ labels: [label], page, size, startAt, publicUrl: 'http://localhost:8080' });
     await expect(making).rejects.toThrow(LabelSheetRefused);
-    await expect(making).rejects.toMatchObject({ field: 'startAt', message: expect.stringContaining(`1 to ${labelsPerSheet(layout)}`) });
+    await expect(making).rejects.toMatchObject({ field: 'startAt', message: expect.stringContaining(`1 to ${labelsPerSheet(layout)}`) as string });
   });
 });
 
