@@ -204,13 +204,12 @@ export function ownDensity(record: PreparedRecord, attribute: NumericAttribute, 
     const noise = normalDensity(distance, variance);
     const losses: { share: number; mean: number; sign: 1 | -1 }[] = [];
     const { chips, damage } = record.settings;
-    if (attribute === 'weight_ct') {
-      losses.push(pooled.damaged
-        ? { share: 0.9, mean: Math.max(damage.weightShare * recorded.value, chips.meanCt), sign: -1 }
-        : { share: chips.rate, mean: chips.meanCt, sign: -1 });
+    if (pooled.damaged && attribute !== 'sg') {
+      const share = attribute === 'weight_ct' ? damage.weightShare : damage.lengthShare;
+      losses.push({ share: damage.tells, mean: Math.max(share * recorded.value, chips.meanCt), sign: -1 });
+    } else if (attribute === 'weight_ct') {
+      losses.push({ share: chips.rate, mean: chips.meanCt, sign: -1 });
       if (record.porous) losses.push({ share: chips.porousGainRate, mean: chips.porousGainShare * recorded.value, sign: 1 });
-    } else if (pooled.damaged && attribute !== 'sg') {
-      losses.push({ share: 0.9, mean: damage.lengthShare * recorded.value, sign: -1 });
     }
     let rest = 1;
     let density = 0;

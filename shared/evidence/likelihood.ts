@@ -1,5 +1,5 @@
 import type { Attribute, CategoryReading, NumericAttribute, ReadingInput, RefractiveAttribute } from '../api/evidence';
-import { ATTRIBUTES, REFRACTIVE_ATTRIBUTES } from '../api/evidence';
+import { ATTRIBUTES, CATEGORY_VALUES, REFRACTIVE_ATTRIBUTES } from '../api/evidence';
 import type { ByBlunders, PieceBody, SubstituteSizes } from './body';
 import { byBlunders, ONE, ownDensity, SIZE_ATTRIBUTES, substituteBody, substituteSizes, times, total } from './body';
 import type { Component } from './components';
@@ -44,9 +44,17 @@ export function withReadings(record: PreparedRecord, pooled: PooledReadings, att
   const present = pooled.present.includes(attribute)
     ? pooled.present
     : ATTRIBUTES.filter((entry) => entry === attribute || pooled.present.includes(entry));
-  if (isCategory(attribute)) return { ...pooled, present, categories: { ...pooled.categories, [attribute]: taken as CategoryReading[] } };
+  if (isCategory(attribute)) {
+    const sorted = [...(taken as readonly CategoryReading[])].sort((a, b) => rankOf(a) - rankOf(b));
+    return { ...pooled, present, categories: { ...pooled.categories, [attribute]: sorted } };
+  }
   const read = poolNumbers(attribute, taken, record.settings, blunderDensity(record, attribute, taken));
   return { ...pooled, present, numbers: { ...pooled.numbers, [attribute]: read } };
+}
+
+/** A place for each category and observer, so that digits do not depend on the order the readings came in. */
+function rankOf({ attribute, value, observer }: CategoryReading): number {
+  return 2 * (CATEGORY_VALUES[attribute] as readonly string[]).indexOf(value) + (observer === 'student' ? 1 : 0);
 }
 
 /** Flat density of a blundered number, per unit of the attribute. */

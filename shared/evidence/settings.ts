@@ -34,8 +34,8 @@ export interface EngineSettings {
   readonly instrumentShare: number;
   /** Loss of weight in use: chance of a chip and its mean, ct; and for porous stones chance and mean of a gain, as a share of the weight. */
   readonly chips: { readonly rate: number; readonly meanCt: number; readonly porousGainRate: number; readonly porousGainShare: number };
-  /** Damage an instructor has seen: mean loss as a share of weight and of a length. */
-  readonly damage: { readonly weightShare: number; readonly lengthShare: number };
+  /** Damage an instructor has seen: chance that it tells in the reading, mean loss as a share of weight and of a length. */
+  readonly damage: { readonly tells: number; readonly weightShare: number; readonly lengthShare: number };
   /** How a substitute's size differs from the record's: standard deviations between two stones of one nominal size. */
   readonly cutting: {
     readonly lengthWidthMm: number;
@@ -105,7 +105,7 @@ export const DEFAULT_SETTINGS: EngineSettings = {
   tail: { share: 0.05, wide: 2.5 },
   instrumentShare: 0.3,
   chips: { rate: 0.05, meanCt: 0.01, porousGainRate: 0.3, porousGainShare: 0.02 },
-  damage: { weightShare: 0.03, lengthShare: 0.02 },
+  damage: { tells: 0.9, weightShare: 0.03, lengthShare: 0.02 },
   cutting: {
     lengthWidthMm: 0.07, lengthWidthShare: 0.0115, depthShare: 0.06, unmatchedShare: 0.1, unmatchedSpread: 0.15,
     shapeFactor: 0.03, profile: 0.1,
