@@ -24,7 +24,7 @@ function toPaymentError(error: unknown): unknown {
   const code = error.code ?? error.rawType ?? 'unknown';
   const described = describe(error, code);
   if (error instanceof Stripe.errors.StripeCardError) {
-    return new PaymentDeclined(error.decline_code ?? code, described, { cause: error });
+    return new PaymentDeclined(error.decline_code || code, described, { cause: error });
   }
   if (error instanceof Stripe.errors.StripeIdempotencyError) {
     return new PaymentRefused('idempotency_key_reused', described, { cause: error });

@@ -73,7 +73,7 @@ const alphabet = 'ABCDEFGHIJKLMNOPQRSTUVWXYZabcdefghijklmnopqrstuvwxyz0123456789
 /** A new id such as `pi_…`; `length` random characters of 62 (24: 142 bits). */
 export function newId(prefix: string, length = 24): string {
   let text = '';
-  for (const byte of randomBytes(length)) text += alphabet[byte % alphabet.length];
+  for (const byte of randomBytes(length)) text += alphabet.charAt(byte % alphabet.length);
   return `${prefix}_${text}`;
 }
 

@@ -12,7 +12,7 @@ import type { Desk } from './http/serve';
 import { endpointDocument } from './routes/account';
 import { createStateFile, noStateFile } from './state.file';
 import { letTimePass } from './time';
-import { createCourier } from './webhooks/courier';
+import { Courier } from './webhooks/courier';
 
 export type { FakeControl } from './control/control';
 
@@ -56,7 +56,7 @@ export function createPaymentFake(options: PaymentFakeOptions): PaymentFake {
   const file = options.filePath === undefined ? noStateFile : createStateFile(options.filePath);
   const bank = createBank({ state: file.read(), pageBase: withoutSlash(options.publicUrl ?? ''), wallClockMs });
   const desk: Desk = { bank, faults: createFaultBook(), save: () => file.write(bank.state) };
-  const courier = createCourier({
+  const courier = new Courier({
     bank,
     secret: options.webhookSecret,
     wallClockMs,

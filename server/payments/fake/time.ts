@@ -23,9 +23,8 @@ export function letTimePass(bank: Bank): void {
   }
   settleRefunds(bank, nowS);
   settleBalance(bank);
-  for (const [key, answer] of Object.entries(bank.state.idempotency)) {
-    if (answer.storedAtS + keysKeptS <= nowS) delete bank.state.idempotency[key];
-  }
+  const kept = Object.entries(bank.state.idempotency).filter(([, answer]) => answer.storedAtS + keysKeptS > nowS);
+  bank.state.idempotency = Object.fromEntries(kept);
 }
 
 function settleRefunds(bank: Bank, nowS: number): void {

@@ -11,8 +11,8 @@ import { answerBank, payOnPage } from '../objects/paying';
 import type { PageOutcome } from '../objects/paying';
 import { failRefund } from '../objects/refunds';
 import { letTimePass } from '../time';
-import { send } from '../webhooks/courier';
 import type { Courier, CourierMode, DeliveryRecord } from '../webhooks/courier';
+import { send } from '../webhooks/send';
 import { signatureHeader } from '../webhooks/sign';
 
 export interface Forgery {

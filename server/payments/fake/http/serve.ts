@@ -17,7 +17,7 @@ export interface Desk {
   bank: Bank;
   faults: FaultBook;
   /** Resolves when what has happened so far would survive the process. */
-  save(): Promise<void>;
+  save: () => Promise<void>;
 }
 
 interface Answer {

@@ -47,7 +47,9 @@ export function pageRoutes(desk: Desk): Router {
     const outcome = answerBank(desk.bank, session, fieldsOf(req).answer === 'approve');
     await settle(desk, { session, outcome, req, res });
   }));
-  router.get('/receipt/:id', (req, res) => void receipt(desk, req, res));
+  router.get('/receipt/:id', (req, res) => {
+    receipt(desk, req, res);
+  });
   return router;
 }
 

@@ -94,7 +94,7 @@ export const accountOperations: readonly Operation[] = [
     fields: [],
     run({ bank, id }) {
       find(bank, 'webhook_endpoint', id);
-      delete bank.state.documents.webhook_endpoint[id];
+      Reflect.deleteProperty(bank.state.documents.webhook_endpoint, id);
       return { id, object: 'webhook_endpoint', deleted: true };
     },
   },

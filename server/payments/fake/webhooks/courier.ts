@@ -1,6 +1,8 @@
 import type { Bank } from '../bank';
 import type { EventDocument, WebhookEndpointDocument } from '../documents';
 import type { Delivery } from '../state';
+import { Rounds } from './rounds';
+import { send } from './send';
 import { signatureHeader } from './sign';
 
 /** How notices misbehave; all off by default. */
@@ -37,201 +39,156 @@ export interface CourierOptions {
   report: (error: unknown) => void;
 }
 
-export interface Courier {
-  setMode(change: Partial<CourierMode>): CourierMode;
-  mode(): CourierMode;
-  /** Sends what was kept back while paused. */
-  release(): void;
-  /** Takes up again what an earlier process did not bring. */
-  resume(): void;
-  /** Resolves when nothing is under way (retries that wait and paused notices do not count). */
-  idle(): Promise<void>;
-  records(): readonly DeliveryRecord[];
-  forget(): void;
-  stop(): void;
-}
-
 const gatherMs = 150;
-const answerWithinMs = 10_000;
 const recordsKept = 1000;
 
 /** Brings every event to every endpoint that wants it, one after another, and again until it is taken. */
-export function createCourier(options: CourierOptions): Courier {
-  const { bank } = options;
-  const stopping = new AbortController();
-  const timers = new Set<NodeJS.Timeout>();
-  let mode = punctual;
-  let records: DeliveryRecord[] = [];
-  let kept: Delivery[] = [];
-  let gathered: Delivery[] = [];
-  let underWay = 0;
-  let generation = 0;
-  let waiting: (() => void)[] = [];
-  let tail = Promise.resolve();
+export class Courier {
+  private readonly stopping = new AbortController();
+  private readonly rounds = new Rounds();
+  private mode = punctual;
+  private brought: DeliveryRecord[] = [];
+  private kept: Delivery[] = [];
+  private gathered: Delivery[] = [];
+  private tail = Promise.resolve();
 
-  function later(ms: number, work: () => void): void {
-    const timer = setTimeout(() => {
-      timers.delete(timer);
-      work();
-    }, ms);
-    timers.add(timer);
+  constructor(private readonly options: CourierOptions) {
+    options.bank.onEvent((event) => {
+      this.accept(event);
+    });
   }
 
-  /** Marks something as under way; the answer ends it. What was forgotten meanwhile no longer counts. */
-  function begin(): () => void {
-    const mine = generation;
-    underWay += 1;
-    return () => {
-      if (mine !== generation) return;
-      underWay -= 1;
-      if (underWay === 0) wake();
-    };
+  setMode(change: Partial<CourierMode>): CourierMode {
+    this.mode = { ...this.mode, ...change };
+    return this.mode;
   }
 
-  function wake(): void {
-    for (const resolve of waiting) resolve();
-    waiting = [];
+  /** Sends what was kept back while paused. */
+  release(): void {
+    this.setMode({ paused: false });
+    const ready = this.kept;
+    this.kept = [];
+    for (const delivery of ready) this.take(delivery);
   }
 
-  function stopTimers(): void {
-    for (const timer of timers) clearTimeout(timer);
-    timers.clear();
-    generation += 1;
-    underWay = 0;
-    wake();
+  /** Takes up again what an earlier process did not bring. */
+  resume(): void {
+    for (const delivery of this.options.bank.state.undelivered) this.take(delivery);
   }
 
-  function dispatch(delivery: Delivery): void {
-    const done = begin();
-    const start = (): void => {
-      tail = tail
-        .then(() => deliver(delivery))
-        .catch(options.report)
-        .finally(done);
-    };
-    if (mode.lateMs > 0) later(mode.lateMs, start);
-    else start();
+  /** Resolves when nothing is under way (retries that wait and paused notices do not count). */
+  idle(): Promise<void> {
+    return this.rounds.idle();
   }
 
-  function take(delivery: Delivery): void {
-    if (mode.paused) kept.push(delivery);
-    else if (mode.reversed) gather(delivery);
-    else dispatch(delivery);
+  records(): readonly DeliveryRecord[] {
+    return this.brought;
   }
 
-  function gather(delivery: Delivery): void {
-    if (gathered.length === 0) {
-      const done = begin();
-      later(gatherMs, () => {
-        const batch = gathered.reverse();
-        gathered = [];
-        for (const late of batch) dispatch(late);
-        done();
-      });
-    }
-    gathered.push(delivery);
+  forget(): void {
+    this.brought = [];
+    this.kept = [];
+    this.gathered = [];
+    this.mode = punctual;
+    this.rounds.forget();
   }
 
-  async function deliver(delivery: Delivery): Promise<void> {
-    const event = bank.state.documents.event[delivery.eventId];
-    const endpoint = bank.state.documents.webhook_endpoint[delivery.endpointId];
-    if (stopping.signal.aborted || event === undefined || endpoint === undefined) return;
-    if (mode.loseNext > 0) {
-      mode = { ...mode, loseNext: mode.loseNext - 1 };
-      drop(delivery);
-    } else if (await bring(event, endpoint)) {
-      event.pending_webhooks -= 1;
-      drop(delivery);
-    } else {
-      retry(delivery);
-    }
-    await options.save();
+  stop(): void {
+    this.stopping.abort();
+    this.rounds.forget();
   }
 
-  async function bring(event: EventDocument, endpoint: WebhookEndpointDocument): Promise<boolean> {
-    const first = await post(event, endpoint);
-    return mode.doubled ? (await post(event, endpoint)) || first : first;
-  }
-
-  async function post(event: EventDocument, endpoint: WebhookEndpointDocument): Promise<boolean> {
-    const payload = JSON.stringify(event);
-    const status = await send(endpoint.url, payload, signatureHeader(payload, options.secret, Math.floor(options.wallClockMs() / 1000)), stopping.signal);
-    records = [...records.slice(1 - recordsKept), { eventId: event.id, type: event.type, status }];
-    return status !== null && status >= 200 && status < 300;
-  }
-
-  function retry(delivery: Delivery): void {
-    const delayMs = options.retryDelaysMs[delivery.attempts];
-    delivery.attempts += 1;
-    if (delayMs === undefined) drop(delivery);
-    else later(delayMs, () => take(delivery));
-  }
-
-  function drop(delivery: Delivery): void {
-    bank.state.undelivered = bank.state.undelivered.filter((other) => other !== delivery);
-  }
-
-  bank.onEvent((event) => {
-    for (const endpoint of Object.values(bank.state.documents.webhook_endpoint)) {
+  private accept(event: EventDocument): void {
+    const { state } = this.options.bank;
+    for (const endpoint of Object.values(state.documents.webhook_endpoint)) {
       const wanted = endpoint.enabled_events.includes('*') || endpoint.enabled_events.includes(event.type);
       if (!wanted || endpoint.status !== 'enabled') continue;
       const delivery = { eventId: event.id, endpointId: endpoint.id, attempts: 0 };
       event.pending_webhooks += 1;
-      bank.state.undelivered.push(delivery);
-      // Not within the operation that caused it: the event must leave as it ends up, and never before the answer is ready.
-      setImmediate(() => take(delivery));
+      state.undelivered.push(delivery);
+      // Not within the operation that caused it, which may have more to do before it is done.
+      setImmediate(() => {
+        this.take(delivery);
+      });
     }
-  });
+  }
 
-  return {
-    setMode(change) {
-      mode = { ...mode, ...change };
-      return mode;
-    },
-    mode: () => mode,
-    release() {
-      mode = { ...mode, paused: false };
-      const ready = kept;
-      kept = [];
-      for (const delivery of ready) take(delivery);
-    },
-    resume() {
-      for (const delivery of bank.state.undelivered) take(delivery);
-    },
-    async idle() {
-      // One turn, so that events emitted just now are counted.
-      await new Promise((resolve) => setImmediate(resolve));
-      if (underWay > 0) await new Promise<void>((resolve) => waiting.push(resolve));
-    },
-    records: () => records,
-    forget() {
-      records = [];
-      kept = [];
-      gathered = [];
-      mode = punctual;
-      stopTimers();
-    },
-    stop() {
-      stopping.abort();
-      stopTimers();
-    },
-  };
-}
+  private take(delivery: Delivery): void {
+    if (this.mode.paused) this.kept.push(delivery);
+    else if (this.mode.reversed) this.gather(delivery);
+    else this.dispatch(delivery);
+  }
 
-/** @returns the receiver's status, or null when it gave none */
-export async function send(url: string, payload: string, signature: string | null, signal?: AbortSignal): Promise<number | null> {
-  const timeout = AbortSignal.timeout(answerWithinMs);
-  try {
-    const response = await fetch(url, {
-      method: 'POST',
-      headers: { 'content-type': 'application/json; charset=utf-8', ...(signature === null ? {} : { 'stripe-signature': signature }) },
-      body: payload,
-      redirect: 'manual',
-      signal: signal === undefined ? timeout : AbortSignal.any([timeout, signal]),
-    });
-    await response.arrayBuffer();
-    return response.status;
-  } catch {
-    return null; // not reachable, too slow, or we are stopping: tried again later
+  private gather(delivery: Delivery): void {
+    if (this.gathered.length === 0) {
+      const done = this.rounds.begin();
+      this.rounds.later(gatherMs, () => {
+        const batch = this.gathered.reverse();
+        this.gathered = [];
+        for (const late of batch) this.dispatch(late);
+        done();
+      });
+    }
+    this.gathered.push(delivery);
+  }
+
+  private dispatch(delivery: Delivery): void {
+    const done = this.rounds.begin();
+    const start = (): void => {
+      this.tail = this.tail
+        .then(() => this.deliver(delivery))
+        .catch(this.options.report)
+        .finally(done);
+    };
+    if (this.mode.lateMs > 0) this.rounds.later(this.mode.lateMs, start);
+    else start();
+  }
+
+  private async deliver(delivery: Delivery): Promise<void> {
+    const { documents } = this.options.bank.state;
+    const event = documents.event[delivery.eventId];
+    const endpoint = documents.webhook_endpoint[delivery.endpointId];
+    if (this.stopping.signal.aborted || event === undefined || endpoint === undefined) return;
+    if (this.mode.loseNext > 0) {
+      this.setMode({ loseNext: this.mode.loseNext - 1 });
+      this.drop(delivery);
+    } else if (await this.bring(event, endpoint)) {
+      event.pending_webhooks -= 1;
+      this.drop(delivery);
+    } else {
+      this.retry(delivery);
+    }
+    await this.options.save();
+  }
+
+  private async bring(event: EventDocument, endpoint: WebhookEndpointDocument): Promise<boolean> {
+    const first = await this.post(event, endpoint);
+    return this.mode.doubled ? (await this.post(event, endpoint)) || first : first;
+  }
+
+  private async post(event: EventDocument, endpoint: WebhookEndpointDocument): Promise<boolean> {
+    const payload = JSON.stringify(event);
+    const signature = signatureHeader(payload, this.options.secret, Math.floor(this.options.wallClockMs() / 1000));
+    const status = await send(endpoint.url, payload, signature, this.stopping.signal);
+    this.brought = [...this.brought.slice(1 - recordsKept), { eventId: event.id, type: event.type, status }];
+    return status !== null && status >= 200 && status < 300;
+  }
+
+  private retry(delivery: Delivery): void {
+    // While stopping nothing counts as a try: the next process takes it up as it was.
+    if (this.stopping.signal.aborted) return;
+    const delayMs = this.options.retryDelaysMs[delivery.attempts];
+    delivery.attempts += 1;
+    if (delayMs === undefined) this.drop(delivery);
+    else {
+      this.rounds.later(delayMs, () => {
+        this.take(delivery);
+      });
+    }
+  }
+
+  private drop(delivery: Delivery): void {
+    const { state } = this.options.bank;
+    state.undelivered = state.undelivered.filter((other) => other !== delivery);
   }
 }
