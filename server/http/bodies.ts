@@ -1,5 +1,6 @@
 import express, { type Request, type RequestHandler } from 'express';
-import multer from 'multer';
+import multer, { MulterError } from 'multer';
+import { BadRequest } from './problem';
 import { unsupportedType } from './problemMapper';
 import type { AnyRoute, UploadedFile, UploadRule } from './route';
 
@@ -31,7 +32,14 @@ function hasBody(request: Request): boolean {
 
 function upload(rule: UploadRule): RequestHandler {
   const limits = { ...formFields, fileSize: rule.maxBytes, files: rule.maxCount };
-  return multer({ storage: multer.memoryStorage(), limits }).array(rule.field, rule.maxCount);
+  const parse = multer({ storage: multer.memoryStorage(), limits }).array(rule.field, rule.maxCount);
+  return (request, response, next) => {
+    void parse(request, response, (error: unknown) => {
+      // A form without a boundary or cut off in the middle fails in the parser below multer with an error of no kind.
+      if (error === undefined || error === null || error instanceof MulterError) next(error);
+      else next(new BadRequest('unreadable_form', 'The form could not be read to its end. Send it again.'));
+    });
+  };
 }
 
 /** The uploaded files of a request, in the order sent. */
