@@ -19,7 +19,7 @@ export async function createInstrument(tx: EntityManager, actor: SchoolActor, re
   refuseFaults(instrumentFaults(kind, numbers));
   const name = request.name.trim();
   await refuseTakenName(tx, name);
-  const row = { id: randomUUID(), schoolId: actor.schoolId, kind, name, ...numbers, retiredAt: null, version: 1 };
+  const row = tx.create(Instrument, { id: randomUUID(), schoolId: actor.schoolId, kind, name, ...numbers, retiredAt: null, version: 1 });
   await tx.insert(Instrument, row);
   return toView(row);
 }
@@ -37,7 +37,7 @@ export async function changeInstrument(tx: EntityManager, instrumentId: string, 
   const after = { ...numbers, name: newName, retiredAt, version: version + 1 };
   const { affected } = await tx.update(Instrument, { id: instrumentId, version }, after);
   if (affected !== 1) throw refused('changed_meanwhile', 'Somebody else changed this instrument meanwhile. Reload it and make the change again.');
-  return toView({ ...before, ...after });
+  return toView(Object.assign(before, after));
 }
 
 function refuseFaults(faults: ReturnType<typeof instrumentFaults>): void {

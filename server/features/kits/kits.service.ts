@@ -15,8 +15,10 @@ import type { KitListQuery } from './kits.dto';
 import { moneyRules, openLoansOf, searchKits, validLabelsOf } from './kits.queries';
 import { lockKit, standingEvent } from './standing';
 
+export type KitList = Pick<KitListQuery, 'cursor' | 'limit' | 'q' | 'place'>;
+
 /** One page of the catalogue by kit number. Where a place is asked for, kits are looked through until the page is full. */
-export async function listKits(tx: EntityManager, accountId: string, query: KitListQuery): Promise<Page<KitRow>> {
+export async function listKits(tx: EntityManager, accountId: string, query: KitList): Promise<Page<KitRow>> {
   const { q, place } = query;
   const wanted = rowsToAsk(query);
   const rows: KitRow[] = [];

@@ -26,7 +26,7 @@ export async function issueLabels(tx: EntityManager, actor: SchoolActor, request
   for (const target of targets) {
     if (await voidLabel(tx, actor, { kitId: kit.id, stoneId: target?.id ?? null }, now)) voidedCount += 1;
     const code = makeLabelCode(randomBytes(LABEL_RANDOM_BYTES));
-    rows.push({ id: randomUUID(), schoolId: actor.schoolId, code, kitId: kit.id, stoneId: target?.id ?? null, issuedBy: actor.accountId, issuedAt: now, voidedAt: null });
+    rows.push(tx.create(Label, { id: randomUUID(), schoolId: actor.schoolId, code, kitId: kit.id, stoneId: target?.id ?? null, issuedBy: actor.accountId, issuedAt: now, voidedAt: null }));
   }
   await tx.insert(Label, rows);
   await recordCustody(tx, ...rows.map((row) => labelEvent(actor, row, 'label_issued', now)));

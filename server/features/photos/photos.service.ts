@@ -34,10 +34,10 @@ export async function addPhoto(db: Database, storage: StoragePort, actor: School
     return await withSchool(db, actor, async (tx) => {
       const stone = await openStone(tx, actor, stoneId);
       const { width, height } = picture.large;
-      const row: Photo = {
+      const row = tx.create(Photo, {
         id: randomUUID(), schoolId: actor.schoolId, stoneId, loanId: null, storageKey: key, mime: picture.mime, width, height,
         note: note.trim(), createdBy: actor.accountId, createdAt: now, removedAt: null,
-      };
+      });
       await tx.insert(Photo, row);
       await recordCustody(tx, { schoolId: actor.schoolId, kitId: stone.kitId, stoneId, kind: 'stone_changed', actorId: actor.accountId, at: now });
       return photoView(row);

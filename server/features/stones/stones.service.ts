@@ -26,7 +26,7 @@ export async function createStone(tx: EntityManager, actor: SchoolActor, kitId: 
   if (kit.standing === 'retired') throw refused('kit_retired', `Kit ${kit.number} is retired. Add the stone to a kit in use.`);
   await refuseOpenLoan(tx, kitId);
   await refuseTakenSlot(tx, kitId, request.slot);
-  const stone: Stone = {
+  const stone = tx.create(Stone, {
     id: randomUUID(), schoolId, kitId,
     slot: request.slot,
     species: request.species,
@@ -41,7 +41,7 @@ export async function createStone(tx: EntityManager, actor: SchoolActor, kitId: 
     standing: 'in_kit',
     version: 1,
     createdAt: now,
-  };
+  });
   await tx.insert(Stone, stone);
   await recordCustody(tx, { schoolId, kitId, stoneId: stone.id, kind: 'stone_catalogued', actorId: accountId, at: now });
   return stoneView(tx, stone);
@@ -72,8 +72,7 @@ export async function changeStone(tx: EntityManager, actor: SchoolActor, stoneId
 }
 
 function changed(before: Stone, change: StoneChange): Stone {
-  return {
-    ...before,
+  return Object.assign(new Stone(), before, {
     slot: change.slot ?? before.slot,
     species: change.species ?? before.species,
     colour: change.colour === undefined ? before.colour : change.colour,
@@ -86,7 +85,7 @@ function changed(before: Stone, change: StoneChange): Stone {
     flags: change.flags === undefined ? before.flags : [...new Set(change.flags)],
     standing: change.standing ?? before.standing,
     version: before.version + 1,
-  };
+  } satisfies Partial<Stone>);
 }
 
 /** Throws `Refused` while a loan of the kit is not settled: the record it is checked against must not move. */

@@ -94,7 +94,7 @@ it('lends a kit again after it was set aside only with a reason, and tells who d
 it('holds standing, record and what a verdict rests on still while somebody has the kit', async () => {
   const kit = await lendableKit('205');
   await lend(kit.id, student.accountId);
-  const [row] = (await catalogue.call.get(`/kits/${kit.id}`)).body.stones as { id: string }[];
+  const [row] = ((await catalogue.call.get(`/kits/${kit.id}`)).body as KitView).stones;
   const stone = (await catalogue.call.get(`/stones/${row?.id}`)).body as StoneView;
   const tries = [
     catalogue.call.patch(`/kits/${kit.id}`, { version: 1, standing: 'retired' }),
@@ -109,7 +109,7 @@ it('holds standing, record and what a verdict rests on still while somebody has 
 
 it('is as blind to a kit for staff who borrow it as for a student', async () => {
   const kit = await lendableKit('206', { title: 'Telling title' });
-  const [row] = (await catalogue.call.get(`/kits/${kit.id}`)).body.stones as { id: string }[];
+  const [row] = ((await catalogue.call.get(`/kits/${kit.id}`)).body as KitView).stones;
   await lend(kit.id, instructor.accountId);
   const borrower = as(test, instructor);
   for (const path of [`/kits/${kit.id}`, `/stones/${row?.id}`, `/kits/${kit.id}/custody`, `/stones/${row?.id}/custody`]) {
@@ -150,7 +150,7 @@ it('finds kits by number, title and label, by place, and page by page', async ()
 
 it('shows nothing of another school', async () => {
   const kit = await lendableKit('207');
-  const [row] = (await catalogue.call.get(`/kits/${kit.id}`)).body.stones as { id: string }[];
+  const [row] = ((await catalogue.call.get(`/kits/${kit.id}`)).body as KitView).stones;
   const stranger = as(test, await test.person(['admin'], await test.school('Elsewhere')));
   for (const path of [`/kits/${kit.id}`, `/stones/${row?.id}`, `/kits/${kit.id}/custody`, `/stones/${row?.id}/custody`]) await stranger.get(path).expect(404);
   await stranger.patch(`/kits/${kit.id}`, { version: 1, title: 'mine' }).expect(404);

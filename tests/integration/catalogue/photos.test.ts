@@ -69,7 +69,7 @@ it.each([
   ['a file over 8 MB', Buffer.alloc(9 * 1024 * 1024, 1), 'image/jpeg'],
 ])('refuses %s, names the field and stores nothing', async (_what, bytes, type) => {
   const before = stored().length;
-  const { body } = await upload(bytes, 'photo.jpg', type).expect(422);
+  const { body } = (await upload(bytes, 'photo.jpg', type).expect(422)) as { body: unknown };
   expect((body as ProblemDocument).errors.map(({ field }) => field)).toEqual(['photo']);
   expect(stored()).toHaveLength(before);
 });
@@ -77,7 +77,7 @@ it.each([
 it('refuses a GIF and a form without a photo by the field', async () => {
   const gif = await sharp({ create: { width: 4, height: 4, channels: 3, background: 'red' } }).gif().toBuffer();
   for (const request of [upload(gif, 'a.png', 'image/png'), form().field('note', 'none')]) {
-    const { body } = await request.expect(422);
+    const { body } = (await request.expect(422)) as { body: unknown };
     expect((body as ProblemDocument).errors.map(({ field }) => field)).toEqual(['photo']);
   }
 });

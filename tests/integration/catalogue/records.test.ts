@@ -32,12 +32,12 @@ it('builds a recorded value from its readings: the mean, an uncertainty that shr
   const kit = await freshKit();
   const { id } = await catalogue.stone(kit.id, 'A');
   const one = await catalogue.readings(id, [{ attribute: 'weight_ct', value: 1.56, instrumentId: of.balance }]);
-  expect(valueOf(one, 'weight_ct')).toMatchObject({ readingCount: 1, value: { value: 1.56, u: expect.closeTo(0.006, 9) } });
+  expect(valueOf(one, 'weight_ct')).toMatchObject({ readingCount: 1, value: { value: 1.56, u: expect.closeTo(0.006, 9) as number } });
   const three = await catalogue.readings(id, [1.57, 1.58].map((value) => ({ attribute: 'weight_ct' as const, value, instrumentId: of.balance })));
   const weight = valueOf(three, 'weight_ct');
-  expect(weight).toMatchObject({ readingCount: 3, value: { value: expect.closeTo(1.57, 9), n: 3, instrument: of.balance } });
+  expect(weight).toMatchObject({ readingCount: 3, value: { value: expect.closeTo(1.57, 9) as number, n: 3, instrument: of.balance } });
   // GUM 4.2, 5.1: scatter s = 0.01 over √3 beside the instrument's own half of u, which repeats do not reduce.
-  expect(weight?.value).toMatchObject({ u: expect.closeTo(Math.hypot(0.01 / Math.sqrt(3), 0.003), 6) });
+  expect(weight?.value).toMatchObject({ u: expect.closeTo(Math.hypot(0.01 / Math.sqrt(3), 0.003), 6) as number });
 });
 
 it('derives the specific gravity from weighings, with the computed uncertainty', async () => {
@@ -45,8 +45,8 @@ it('derives the specific gravity from weighings, with the computed uncertainty',
   const { id } = await catalogue.stone(kit.id, 'A');
   const stone = await catalogue.readings(id, [{ attribute: 'sg', airCt: 4.02, waterCt: 3.02, waterC: 20, instrumentId: of.balance }]);
   // 4.02/(4.02−3.02) = 4.02 (Wade 1918) times the density of water at 20 °C, 0.998232 (Tanaka 2001).
-  expect(valueOf(stone, 'sg')?.value).toMatchObject({ value: expect.closeTo(4.0129, 3), u: expect.closeTo(0.0302, 3) });
-  expect(stone.readings[0]).toMatchObject({ attribute: 'sg', weighing: { airCt: 4.02, waterCt: 3.02, waterC: 20 }, u: expect.closeTo(0.0302, 3) });
+  expect(valueOf(stone, 'sg')?.value).toMatchObject({ value: expect.closeTo(4.0129, 3) as number, u: expect.closeTo(0.0302, 3) as number });
+  expect(stone.readings[0]).toMatchObject({ attribute: 'sg', weighing: { airCt: 4.02, waterCt: 3.02, waterC: 20 }, u: expect.closeTo(0.0302, 3) as number });
 });
 
 it('keeps an index over the limit as the limit of the liquid it was read with', async () => {
@@ -82,7 +82,7 @@ it('refuses an instrument that cannot read the attribute, by its field', async (
     { attribute: 'pleochroism', category: 'none', instrumentId: of.polariscope },
     { attribute: 'ri_spot', value: 1.62 },
   ] };
-  const { body } = await catalogue.call.post(`/stones/${id}/readings`, wrong).expect(422);
+  const { body } = (await catalogue.call.post(`/stones/${id}/readings`, wrong).expect(422)) as { body: unknown };
   expect(fields(body)).toEqual([0, 1, 2, 3, 4].map((i) => `readings[${i}].instrumentId`));
   expect(((await catalogue.call.get(`/stones/${id}`)).body as StoneView).readings).toEqual([]);
 });
@@ -95,8 +95,8 @@ it('refuses another school’s instrument and one that is retired', async () => 
   const spare = (await catalogue.call.post('/instruments', { kind: 'balance', name: 'Old balance', standardUncertainty: 0.01 }).expect(201)).body as { id: string };
   await catalogue.call.patch(`/instruments/${spare.id}`, { version: 1, retired: true }).expect(200);
   for (const [instrumentId, words] of [[theirs.balance, 'register'], [spare.id, 'retired']] as const) {
-    const { body } = await catalogue.call.post(`/stones/${id}/readings`, { readings: [{ attribute: 'weight_ct', value: 1.5, instrumentId }] }).expect(422);
-    expect(problem(body).errors).toEqual([{ field: 'readings[0].instrumentId', message: expect.stringContaining(words) }]);
+    const { body } = (await catalogue.call.post(`/stones/${id}/readings`, { readings: [{ attribute: 'weight_ct', value: 1.5, instrumentId }] }).expect(422)) as { body: unknown };
+    expect(problem(body).errors).toEqual([{ field: 'readings[0].instrumentId', message: expect.stringContaining(words) as string }]);
   }
 });
 
@@ -120,7 +120,7 @@ it.each([
   const { id } = await catalogue.stone(kit.id, 'A');
   const instrumentId = entry.attribute === 'polariscope' ? of.polariscope : entry.attribute.startsWith('ri') ? of.refractometer : of.balance;
   const good = { attribute: 'weight_ct', value: 1.5, instrumentId: of.balance };
-  const { body } = await catalogue.call.post(`/stones/${id}/readings`, { readings: [good, { ...entry, instrumentId }] }).expect(422);
+  const { body } = (await catalogue.call.post(`/stones/${id}/readings`, { readings: [good, { ...entry, instrumentId }] }).expect(422)) as { body: unknown };
   expect(fields(body)).toEqual([`readings[1].${field}`]);
 });
 
@@ -133,7 +133,7 @@ it('strikes a slip with a reason: it stays visible, no longer counts, and cannot
   const after = (await as(test, instructor).post(`/readings/${slip?.id}/strike`, { reason: 'decimal point slipped' }).expect(200)).body as StoneView;
   expect(valueOf(after, 'weight_ct')).toMatchObject({ readingCount: 1, value: { value: 1.57 } });
   expect(after.readings.find((reading) => reading.id === slip?.id)).toMatchObject({ value: 15.7, struck: { reason: 'decimal point slipped', by: { name: 'Tomas' } } });
-  const { body } = await as(test, instructor).post(`/readings/${slip?.id}/strike`, { reason: 'once more' }).expect(409);
+  const { body } = (await as(test, instructor).post(`/readings/${slip?.id}/strike`, { reason: 'once more' }).expect(409)) as { body: unknown };
   expect(problem(body).code).toBe('struck_already');
 });
 

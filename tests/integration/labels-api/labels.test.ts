@@ -125,7 +125,7 @@ it('gives the same answer for another school’s label as for a code nobody prin
   const stranger = await test.person(['admin'], await test.school('Elsewhere'));
   const nobody = await test.person(['student'], undefined);
   const answer = async (who: TestPerson, asked: string): Promise<object> => {
-    const { body } = await as(test, who).get(`/labels/${asked}`).expect(404);
+    const { body } = (await as(test, who).get(`/labels/${asked}`).expect(404)) as { body: unknown };
     return { ...problem(body), requestId: '' };
   };
   const unknown = await answer(student, makeLabelCode(randomBytes(LABEL_RANDOM_BYTES)));
@@ -146,7 +146,7 @@ it('finds labels of each school a person belongs to, whichever is current', asyn
 });
 
 it('says what is wrong with a mistyped code, and never fails on rubbish', async () => {
-  const { body } = await as(test, student).get('/labels/ABCDEFGH').expect(422);
+  const { body } = (await as(test, student).get('/labels/ABCDEFGH').expect(422)) as { body: unknown };
   expect(problem(body).errors).toEqual([{ field: 'code', message: 'A label code has 12 characters. Check it and try again.' }]);
   for (const rubbish of ['%20', '%F0%9F%92%8E', 'x'.repeat(200), "'--", '0000-0000-0000']) {
     expect((await as(test, student).get(`/labels/${rubbish}`)).status).toBeLessThan(500);

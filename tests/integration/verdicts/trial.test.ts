@@ -42,7 +42,7 @@ it('finds the swapped stone to be different, with reasons that sum to the whole'
   expect(answer.contributions.reduce((sum, { log10LR }) => sum + log10LR, 0)).toBeCloseTo(answer.log10LR, 9);
   expect(answer.alternatives[0]?.species).toBe('glass');
   // From the example: (1.104 − 1.566) / √(0.004² + 0.004²) = −81.7, and E_n with U = 2u half of it.
-  expect(answer.contributions.find(({ attribute }) => attribute === 'weight_ct')).toMatchObject({ z: expect.closeTo(-81.7, 1), en: expect.closeTo(-40.8, 1) });
+  expect(answer.contributions.find(({ attribute }) => attribute === 'weight_ct')).toMatchObject({ z: expect.closeTo(-81.7, 1) as number, en: expect.closeTo(-40.8, 1) as number });
 });
 
 it('gives the same digits for the same request, and stores nothing', async () => {
@@ -62,7 +62,7 @@ it('needs neither an idempotency key nor colour, shape, flags, observer or the s
 it('takes weighings for SG and an index over the limit as they are described', async () => {
   const readings = [{ attribute: 'sg', airCt: 1.566, waterCt: 1.127, waterC: 20, uCt: 0.006 }, { attribute: 'ri_spot', value: 'over_limit', limit: 1.81 }];
   const answer = (await send({ recorded, readings }).expect(200)).body as VerdictResponse;
-  expect(answer.contributions.find(({ attribute }) => attribute === 'sg')).toMatchObject({ value: expect.closeTo(3.561, 2), u: expect.closeTo(0.06, 1) });
+  expect(answer.contributions.find(({ attribute }) => attribute === 'sg')).toMatchObject({ value: expect.closeTo(3.561, 2) as number, u: expect.closeTo(0.06, 1) as number });
   expect(answer.contributions.find(({ attribute }) => attribute === 'ri_spot')).toMatchObject({ value: 'over_limit', z: null, en: null });
 });
 
@@ -117,6 +117,6 @@ it('is for staff only, while the table of species is for everybody signed in', a
   await as(test, student).post('/verdicts/trial', { recorded, readings: swapped }).expect(403);
   await as(test, undefined).post('/verdicts/trial', { recorded, readings: swapped }).expect(401);
   const species = (await as(test, student).get('/species').expect(200)).body as SpeciesSummary[];
-  expect(species.find(({ id }) => id === 'topaz')).toMatchObject({ name: expect.stringContaining('topaz'), opticSign: '+', sg: [3.53, 3.57], sourceKind: 'memory' });
+  expect(species.find(({ id }) => id === 'topaz')).toMatchObject({ name: expect.stringContaining('topaz') as string, opticSign: '+', sg: [3.53, 3.57], sourceKind: 'memory' });
   await as(test, undefined).get('/species').expect(401);
 });
