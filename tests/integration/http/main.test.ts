@@ -14,14 +14,8 @@ afterAll(async () => {
   await database.drop();
 });
 
-async function freePort(): Promise<number> {
-  const server = createServer().listen(0, '127.0.0.1');
-  await once(server, 'listening');
-  const { port } = server.address() as AddressInfo;
-  server.close();
-  await once(server, 'close');
-  return port;
-}
+/** Below the range from which the system deals out ports, so that no other test's short-lived server can have it. */
+const port = 18_400 + (process.pid % 100);
 
 function start(environment: Record<string, string>): { child: ChildProcessWithoutNullStreams; said: () => string } {
   const child = spawn(process.execPath, ['-r', './docker-free-scripts/register.cjs', 'server/main.ts'], { cwd: root, env: { NODE_ENV: 'test', PATH: process.env['PATH'] ?? '', ...environment } });
@@ -31,7 +25,7 @@ function start(environment: Record<string, string>): { child: ChildProcessWithou
   return { child, said: () => text };
 }
 
-async function environment(port: number): Promise<Record<string, string>> {
+function environment(port: number): Record<string, string> {
   return {
     TRAYWARD_MODE: 'test', PORT: String(port), HOST: '127.0.0.1', ACCESS_TOKEN_SECRET: 'test secret of at least thirty-two characters',
     STRIPE_SECRET_KEY: 'sk_test_of_the_tests', STRIPE_WEBHOOK_SECRET: 'whsec_of_the_tests', STRIPE_API_BASE: 'http://127.0.0.1:1', SMTP_URL: 'smtp://127.0.0.1:1', ...database.environment,
@@ -49,8 +43,7 @@ async function untilHealthy(port: number, said: () => string): Promise<void> {
 
 describe('the server process', () => {
   it('serves until SIGTERM and then ends in order', async () => {
-    const port = await freePort();
-    const { child, said } = start(await environment(port));
+    const { child, said } = start(environment(port));
     await untilHealthy(port, said);
     child.kill('SIGTERM');
     const [code] = (await once(child, 'exit')) as [number | null];
@@ -69,8 +62,7 @@ describe('the server process', () => {
   it('says so when the port is taken', async () => {
     const taken = createServer().listen(0, '127.0.0.1');
     await once(taken, 'listening');
-    const { port } = taken.address() as AddressInfo;
-    const { child, said } = start(await environment(port));
+    const { child, said } = start(environment((taken.address() as AddressInfo).port));
     const [code] = (await once(child, 'exit')) as [number | null];
     taken.close();
     expect(code).toBe(1);
