@@ -3,7 +3,6 @@ import { recordCustody } from '@/server/features/custody/custody.service';
 import { closePageLater } from '@/server/features/deposits/closePage';
 import { queueMail } from '@/server/mail/queueMail';
 import type { CancelReason } from '@shared/api/loans';
-import { adminIds } from './admins';
 import { neutralKit } from './lendingRules';
 import type { Loan } from './loan.entity';
 import { moveLoan } from './loanState';
@@ -37,11 +36,8 @@ export async function cancelLoan(tx: EntityManager, loan: Loan, how: Cancelling)
     detail: { reason: words === '' ? reasonWords[how.reason] : `${reasonWords[how.reason]}: ${words}` },
   });
   await closePageLater(tx, loan.id, how.now);
-  const told = how.reason === 'jar_absent' ? [loan.borrowerId, ...(await adminIds(tx))] : [loan.borrowerId];
-  for (const toAccountId of new Set(told)) {
-    await queueMail(tx, {
-      schoolId: loan.schoolId, toAccountId, template: 'loan-cancelled', dedupeKey: `loan-cancelled:${loan.id}`,
-      data: { loanId: loan.id, kit: await neutralKit(tx, loan.kitId), reason: how.reason, ...(how.absentSlots === undefined ? {} : { absentSlots: how.absentSlots }) },
-    });
-  }
+  await queueMail(tx, {
+    schoolId: loan.schoolId, toAccountId: loan.borrowerId, template: 'loan-cancelled', dedupeKey: `loan-cancelled:${loan.id}`,
+    data: { loanId: loan.id, kit: await neutralKit(tx, loan.kitId), reason: how.reason, ...(how.absentSlots === undefined ? {} : { absentSlots: how.absentSlots }) },
+  });
 }

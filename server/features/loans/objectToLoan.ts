@@ -3,6 +3,7 @@ import { recordCustody } from '@/server/features/custody/custody.service';
 import { outcomeOf } from '@/server/features/settlement/outcome';
 import { forbidden, refused } from '@/server/http/problem';
 import type { LoanOutcome } from '@shared/api/loans';
+import { mailAdmins } from './admins';
 import { isBorrower, loanFor, type LoanActor } from './loanAccess';
 import { lockLoan } from './loanState';
 
@@ -22,4 +23,5 @@ export async function objectToLoan(tx: EntityManager, loanId: string, text: stri
   if (!mayObject(outcome, now)) throw refused('nothing_to_object', 'There is nothing to object to: nothing is kept, or the time for it is over. Ask at the desk.');
   await tx.query('INSERT INTO objection (loan_id, school_id, text, made_by, made_at) VALUES ($1, $2, $3, $4, $5)', [loanId, loan.schoolId, text, actor.accountId, now]);
   await recordCustody(tx, { schoolId: loan.schoolId, kitId: loan.kitId, loanId, kind: 'objection_made', actorId: actor.accountId, at: now });
+  await mailAdmins(tx, loan, { template: 'objection-made' });
 }

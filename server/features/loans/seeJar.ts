@@ -6,6 +6,7 @@ import { forbidden, invalid } from '@/server/http/problem';
 import type { SeeJarRequest } from '@shared/api/loans';
 import { checkTransition } from '@shared/lending';
 import { may } from '@shared/permissions';
+import { mailAdmins } from './admins';
 import { cancelLoan } from './cancelLoan';
 import { neutralKit } from './lendingRules';
 import { Loan, LoanStone } from './loan.entity';
@@ -61,5 +62,6 @@ async function absent(tx: EntityManager, loan: Loan, jar: LoanStone, actor: Loan
   const at = { schoolId: loan.schoolId, kitId: loan.kitId, loanId: loan.id };
   await recordCustody(tx, { ...at, stoneId: jar.stoneId, kind: 'jar_absent', actorId: actor.accountId, at: now });
   await cancelLoan(tx, loan, { reason: 'jar_absent', actorId: actor.accountId, now, absentSlots: [jar.slot] });
+  await mailAdmins(tx, loan, { template: 'jar-absent', slots: [jar.slot] });
   await setKitAside(tx, { ...at, reason: `Jar ${jar.slot} was not there at take-out`, actorId: actor.accountId, now });
 }

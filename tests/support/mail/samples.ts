@@ -26,6 +26,8 @@ export const samples: MailData = {
   },
   'payment-too-late': { loanId, kit, deposit: { ...sixty, mode: 'hold' } },
   'hold-secured': { loanId, kit, deposit: sixty },
+  'jar-absent': { loanId, kit, slots: ['F'] },
+  'objection-made': { loanId, kit },
   'loan-cancelled': { loanId, kit, reason: 'jar_absent', absentSlots: ['F'] },
 };
 
