@@ -8,8 +8,9 @@ import type { Logger as Pino } from 'pino';
 export function workerLogger(log?: Pino): Logger {
   return new Logger(() => (level, message, meta) => {
     if (meta?.['failure'] === true) return;
+    const severity: string = level; // the library declares an enum that does not exist at run time
     const line = message.split('\n', 1)[0] ?? '';
-    if (String(level) === 'error') log?.error({ from: 'queue' }, line);
-    else if (String(level) === 'warning') log?.warn({ from: 'queue' }, line);
+    if (severity === 'error') log?.error({ from: 'queue' }, line);
+    else if (severity === 'warning') log?.warn({ from: 'queue' }, line);
   });
 }
