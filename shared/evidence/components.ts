@@ -13,7 +13,12 @@ export interface Component {
   readonly low: number;
   readonly high: number;
   readonly uIndex: number;
+  /** Pieces of equal `sg` and `uSg` share a number, counted from 0: their sizes, SG and weight are worked out once. */
+  readonly body: number;
 }
+
+/** A piece before its place among the others is known. */
+type Piece = Omit<Component, 'body'>;
 
 export interface SpeciesModel {
   readonly row: SpeciesRow;
@@ -37,7 +42,14 @@ const models = new WeakMap<EngineSettings, readonly SpeciesModel[]>();
 export function speciesModels(settings: EngineSettings): readonly SpeciesModel[] {
   const known = models.get(settings);
   if (known !== undefined) return known;
-  const built = SPECIES_ROWS.map((row) => ({ row, components: componentsOf(row, settings.spreads[row.id] ?? row.spread) }));
+  const bodies = new Map<string, number>();
+  const numbered = (piece: Piece): Component => {
+    const key = `${String(piece.sg)}|${String(piece.uSg)}`;
+    const body = bodies.get(key) ?? bodies.size;
+    bodies.set(key, body);
+    return { ...piece, body };
+  };
+  const built = SPECIES_ROWS.map((row) => ({ row, components: componentsOf(row, settings.spreads[row.id] ?? row.spread).map(numbered) }));
   models.set(settings, built);
   return built;
 }
@@ -48,7 +60,7 @@ export function modelOf(id: string, settings: EngineSettings): SpeciesModel {
   return model;
 }
 
-function componentsOf(row: SpeciesRow, spread: { sg: number; ri: number }): Component[] {
+function componentsOf(row: SpeciesRow, spread: { sg: number; ri: number }): Piece[] {
   if (WIDE.has(row.id)) return pieces(row, 6, 0.5);
   if (SOLID_SOLUTIONS.has(row.id)) return pieces(row, 4, 1);
   const extent = indexExtent(row);
@@ -66,7 +78,7 @@ function componentsOf(row: SpeciesRow, spread: { sg: number; ri: number }): Comp
 }
 
 /** `count` equal pieces along the range; `lean` 1 ties the index to SG, 0 leaves it free over its whole range. */
-function pieces(row: SpeciesRow, count: number, lean: number): Component[] {
+function pieces(row: SpeciesRow, count: number, lean: number): Piece[] {
   const extent = indexExtent(row);
   const sgStep = (row.sg[1] - row.sg[0]) / count;
   const span = extent.low[1] - extent.low[0];

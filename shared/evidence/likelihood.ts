@@ -148,14 +148,17 @@ function pickSizes(pooled: PooledReadings) {
 }
 
 /** Body likelihoods of every piece of every species, kept so that a further optical reading need not weigh the stone again. */
-export interface SubstituteBodies { readonly sizes: SubstituteSizes; readonly pieces: readonly (readonly PieceBody[])[] }
+export interface SubstituteBodies { readonly sizes: SubstituteSizes; readonly byBody: readonly (PieceBody | undefined)[] }
 
 export function substituteBodies(record: PreparedRecord, { numbers, ...pooled }: PooledReadings): SubstituteBodies {
   const body = { sizes: pickSizes({ numbers, ...pooled }), sg: numbers.sg, weight: numbers.weight_ct };
   const sizes = substituteSizes(record, body);
-  const pieces = speciesModels(record.settings).map(({ components }, k) => (
-    record.shares[k] === 0 ? [] : components.map((piece) => substituteBody(sizes, body, piece))));
-  return { sizes, pieces };
+  const byBody: (PieceBody | undefined)[] = [];
+  speciesModels(record.settings).forEach(({ components }, k) => {
+    if (record.shares[k] === 0) return;
+    for (const piece of components) byBody[piece.body] ??= substituteBody(sizes, body, piece);
+  });
+  return { sizes, byBody };
 }
 
 function anotherLikelihoods(record: PreparedRecord, pooled: PooledReadings, bodies: SubstituteBodies): { another: number[]; bySpecies: number[] } {
@@ -176,10 +179,10 @@ function anotherLikelihoods(record: PreparedRecord, pooled: PooledReadings, bodi
     const share = record.shares[k] ?? 0;
     if (share === 0) return 0;
     const sums: [number, number, number] = [0, 0, 0];
-    components.forEach((piece, j) => {
+    for (const piece of components) {
       const odds = share * piece.weight;
-      const found = bodies.pieces[k]?.[j];
-      if (found === undefined) return;
+      const found = bodies.byBody[piece.body];
+      if (found === undefined) continue;
       add(place.sg, odds * total(found.afterSg));
       add(place.weight_ct, odds * total(found.afterWeight));
       let running = found.afterWeight;
@@ -190,7 +193,7 @@ function anotherLikelihoods(record: PreparedRecord, pooled: PooledReadings, bodi
       sums[0] += odds * running[0];
       sums[1] += odds * running[1];
       sums[2] += odds * running[2];
-    });
+    }
     const products = optics.of(row);
     OPTICS.forEach((attribute, i) => {
       if (place[attribute] !== undefined) add(place[attribute], total(times(sums, products[i] ?? ONE)));

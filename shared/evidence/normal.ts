@@ -5,11 +5,12 @@
 export const EXPONENT_FLOOR = -45;
 
 const SQRT_2PI = Math.sqrt(2 * Math.PI);
+const LOWEST = Math.exp(EXPONENT_FLOOR);
 
 /** Normal density at a distance from its mean, floored at `EXPONENT_FLOOR`; `variance` > 0. */
 export function normalDensity(distance: number, variance: number): number {
   const exponent = (-0.5 * distance * distance) / variance;
-  return Math.exp(exponent < EXPONENT_FLOOR ? EXPONENT_FLOOR : exponent) / (SQRT_2PI * Math.sqrt(variance));
+  return (exponent < EXPONENT_FLOOR ? LOWEST : Math.exp(exponent)) / (SQRT_2PI * Math.sqrt(variance));
 }
 
 /**
@@ -51,7 +52,7 @@ export function intervalDensity(y: number, low: number, high: number, variance: 
   const sd = Math.sqrt(variance);
   const width = high - low;
   if (width < 0.05 * sd) return normalDensity(y - (low + high) / 2, variance + (width * width) / 12);
-  const floor = Math.exp(EXPONENT_FLOOR) / (SQRT_2PI * sd);
+  const floor = LOWEST / (SQRT_2PI * sd);
   // The difference of two upper tails loses no digits, where 1 − Φ would: measure from the nearer end.
   const middle = (low + high) / 2;
   const distance = Math.abs(y - middle) - width / 2;

@@ -145,6 +145,9 @@ export function ownOptics(record: PreparedRecord, readings: CategoryReadings): B
   }));
 }
 
+/** Species of one key do the same between crossed polars. */
+const opticsKeys = new Map(SPECIES_ROWS.map((row) => [row, `${row.polariscope}|${figureOf(row) ?? ''}|${row.opticSign ?? ''}`]));
+
 /** States of the optics that species share, so that each is worked out once per verdict. */
 export interface SubstituteOptics { of: (row: SpeciesRow) => ByBlunders[] }
 
@@ -158,7 +161,7 @@ export function substituteOptics(record: PreparedRecord, readings: CategoryReadi
   return {
     of(row) {
       const figure = figureOf(row);
-      const key = `${row.polariscope}|${figure ?? ''}|${row.opticSign ?? ''}`;
+      const key = opticsKeys.get(row) ?? row.id;
       const found = known.get(key);
       if (found !== undefined) return found;
       const reactions = reactionsOf(row);
