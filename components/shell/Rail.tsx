@@ -34,7 +34,7 @@ export function Rail({ compact }: { compact: boolean }) {
 function RailHead() {
   const { school } = useSession();
   return (
-    <View style={styles.head}>
+    <View role="banner" style={styles.head}>
       <View style={styles.name}>
         <Wordmark onField large />
         <Text size="quiet" tone="softOnField">

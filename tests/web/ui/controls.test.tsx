@@ -67,6 +67,8 @@ describe('Links', () => {
 
   it('leave a click with Control to the browser', async () => {
     const user = userEvent.setup();
+    // jsdom cannot follow a link; what matters is that the app does not.
+    document.addEventListener('click', (event) => event.preventDefault(), { once: true });
     show(<Ui.Link label="Kits" to="/kits" />);
     await user.keyboard('{Control>}');
     await user.click(screen.getByRole('link'));
@@ -86,7 +88,7 @@ describe('Fields', () => {
   it('take a comma for a point and name the unit', async () => {
     const user = userEvent.setup();
     show(<NumberBox />);
-    await user.type(screen.getByRole('textbox', { name: 'Weight, ct' }), '1,5 ct!');
+    await user.type(screen.getByRole('textbox', { name: 'Weight ct' }), '1,5 ct!');
     expect(screen.getByText('= 1.5')).toBeInTheDocument();
   });
 
@@ -136,7 +138,7 @@ describe('Keypad', () => {
     const enter = jest.fn();
     show(<PadBox onEnter={enter} />);
     for (const name of ['1', 'Point', '5']) await user.click(screen.getByRole('button', { name }));
-    const box = screen.getByRole('textbox', { name: 'Weight, ct' });
+    const box = screen.getByRole('textbox', { name: 'Weight ct' });
     expect(box).toHaveValue('1.5');
     await user.type(box, '6.7x{Enter}');
     expect(box).toHaveValue('1.567');

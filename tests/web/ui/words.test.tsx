@@ -16,7 +16,7 @@ describe('Reading', () => {
     [1.5661, 0.0042, 'ct', '1.566 ± 0.004 ct'],
     [1.62, 0.006, undefined, '1.620 ± 0.006'],
     [3.5612, 0.0123, undefined, '3.561 ± 0.012'],
-    [8.02, 0.0096, 'mm', '8.02 ± 0.01 mm'],
+    [8.02, 0.0096, 'mm', '8.020 ± 0.010 mm'],
     [250, 12, undefined, '250 ± 12'],
   ])('shows %d with u %d as %s %s', (value, u, unit, text) => {
     expect(Ui.formatMeasured({ value, u, unit })).toBe(text);
