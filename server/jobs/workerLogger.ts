@@ -3,7 +3,7 @@ import type { Logger as Pino } from 'pino';
 
 /**
  * The queue library's own lines, warnings and errors only, first line only. Failed jobs are left out: the library
- * would print the whole job and error, and `runner.ts` has already logged them without anything personal.
+ * would print the whole job and error, and `perform.ts` has already logged them without anything personal.
  */
 export function workerLogger(log?: Pino): Logger {
   return new Logger(() => (level, message, meta) => {
