@@ -122,7 +122,8 @@ export class ApiClient {
 
 /** Only one tab of this browser renews at a time, where the browser can say so. */
 async function inTurn<T>(work: () => Promise<T>): Promise<T> {
-  const locks = globalThis.navigator?.locks;
+  // Only secure pages have locks; without them two tabs rely on the server's short grace for the token before.
+  const locks = navigator.locks as LockManager | undefined;
   return locks ? await locks.request('trayward.renew', work) : await work();
 }
 

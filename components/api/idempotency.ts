@@ -27,7 +27,7 @@ export function settleKey(operation: string, error?: unknown): void {
   if (error !== undefined && isTransient(error)) return;
   memory.delete(operation);
   try {
-    globalThis.localStorage?.removeItem(prefix + operation);
+    localStorage.removeItem(prefix + operation);
   } catch {
     // Storage is closed; the copy in memory is gone.
   }
@@ -38,7 +38,7 @@ const memory = new Map<string, PendingKey>();
 
 function read(operation: string): PendingKey | undefined {
   try {
-    const text = globalThis.localStorage?.getItem(prefix + operation);
+    const text = localStorage.getItem(prefix + operation);
     if (text) return JSON.parse(text) as PendingKey;
   } catch {
     // Fall through to memory.
@@ -49,7 +49,7 @@ function read(operation: string): PendingKey | undefined {
 function write(operation: string, pending: PendingKey): void {
   memory.set(operation, pending);
   try {
-    globalThis.localStorage?.setItem(prefix + operation, JSON.stringify(pending));
+    localStorage.setItem(prefix + operation, JSON.stringify(pending));
   } catch {
     // Kept in memory.
   }
@@ -68,7 +68,7 @@ function stableText(value: unknown): string {
     const entries = Object.entries(value).sort(([left], [right]) => (left < right ? -1 : 1));
     return `{${entries.map(([key, inner]) => `${JSON.stringify(key)}:${stableText(inner)}`).join(',')}}`;
   }
-  return JSON.stringify(value) ?? 'undefined';
+  return value === undefined ? 'undefined' : JSON.stringify(value);
 }
 
 /** FNV-1a over two seeds, 64 bits in hexadecimal: tells contents apart without storing them. */

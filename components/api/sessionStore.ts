@@ -59,7 +59,7 @@ export class SessionStore {
 
 function readSchool(): string | null {
   try {
-    return globalThis.localStorage?.getItem(schoolKey) ?? null;
+    return localStorage.getItem(schoolKey);
   } catch {
     return null;
   }
@@ -67,7 +67,7 @@ function readSchool(): string | null {
 
 function storeSchool(schoolId: string): void {
   try {
-    globalThis.localStorage?.setItem(schoolKey, schoolId);
+    localStorage.setItem(schoolKey, schoolId);
   } catch {
     // Storage is closed: the first school is shown again after a reload.
   }

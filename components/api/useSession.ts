@@ -54,7 +54,7 @@ export function useSignOutMutation() {
   const store = useSessionStore();
   const queries = useQueryClient();
   return useMutation({
-    mutationFn: () => api.delete<void>('/sessions/current'),
+    mutationFn: () => api.delete<undefined>('/sessions/current'),
     onSettled: () => {
       store.signOut();
       queries.clear();

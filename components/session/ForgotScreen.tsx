@@ -14,7 +14,7 @@ import { Text } from '@/components/ui/Text';
 /** Asks for a reset link. The answer is the same whether or not an account has this address. */
 export function ForgotScreen() {
   const api = useApi();
-  const ask = useMutation({ mutationFn: (request: PasswordResetRequest) => api.post<void>('/password-resets', request, { signedIn: false }) });
+  const ask = useMutation({ mutationFn: (request: PasswordResetRequest) => api.post<undefined>('/password-resets', request, { signedIn: false }) });
   const [email, setEmail] = useState('');
   const [asked, setAsked] = useState(false);
   const missing = asked && !email.includes('@') ? 'Enter an e-mail address, such as name@school.example.' : undefined;

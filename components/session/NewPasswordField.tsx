@@ -15,7 +15,7 @@ export interface NewPasswordState {
 export function useNewPassword(): NewPasswordState {
   const [value, onChange] = useState('');
   const [checked, setChecked] = useState(false);
-  const short = [...value].length < shortestPassword;
+  const short = Array.from(value).length < shortestPassword;
   return {
     value,
     onChange,

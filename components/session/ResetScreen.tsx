@@ -16,7 +16,7 @@ export function ResetScreen() {
   const { token } = useLocalSearchParams<{ token: string }>();
   const api = useApi();
   const reset = useMutation({
-    mutationFn: (request: NewPasswordRequest) => api.post<void>(`/password-resets/${encodeURIComponent(token)}`, request, { signedIn: false }),
+    mutationFn: (request: NewPasswordRequest) => api.post<undefined>(`/password-resets/${encodeURIComponent(token)}`, request, { signedIn: false }),
   });
   const password = useNewPassword();
 

@@ -11,6 +11,7 @@ import { Link } from '@/components/ui/Link';
 import { Notice } from '@/components/ui/Notice';
 import { PageFrame } from '@/components/ui/PageFrame';
 import { Failed } from '@/components/ui/states';
+import { Text } from '@/components/ui/Text';
 
 export function SignInScreen() {
   const session = useSession();
@@ -20,7 +21,7 @@ export function SignInScreen() {
     <PageFrame title="Sign in" lead="Use the e-mail address your school knows you by.">
       {session.ended ? (
         <Notice live title="You were signed out">
-          Your session ran out. Sign in to go on where you were.
+          <Text size="quiet">Your session ran out. Sign in to go on where you were.</Text>
         </Notice>
       ) : null}
       <SignInForm />

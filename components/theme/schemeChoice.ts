@@ -6,7 +6,7 @@ const storageKey = 'trayward.scheme';
 /** Reads the stored choice; `system` where there is none or storage is closed (private windows may refuse it). */
 export function readSchemeChoice(): SchemeChoice {
   try {
-    const stored = globalThis.localStorage?.getItem(storageKey);
+    const stored = localStorage.getItem(storageKey);
     return stored === 'light' || stored === 'dark' ? stored : 'system';
   } catch {
     return 'system';
@@ -15,8 +15,8 @@ export function readSchemeChoice(): SchemeChoice {
 
 export function storeSchemeChoice(choice: SchemeChoice): void {
   try {
-    if (choice === 'system') globalThis.localStorage?.removeItem(storageKey);
-    else globalThis.localStorage?.setItem(storageKey, choice);
+    if (choice === 'system') localStorage.removeItem(storageKey);
+    else localStorage.setItem(storageKey, choice);
   } catch {
     // The choice then lasts for this visit only.
   }

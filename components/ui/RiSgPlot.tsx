@@ -76,8 +76,7 @@ function PlotBody({ record, reading, boxes, width, height, colors }: BodyProps) 
       {boxes.map((box, index) => (
         <G key={box.name}>
           <Rect
-            x={x(box.ri[0]) - 2}
-            y={y(box.sg[1]) - 2}
+            transform={`translate(${x(box.ri[0]) - 2}, ${y(box.sg[1]) - 2})`}
             width={x(box.ri[1]) - x(box.ri[0]) + 4}
             height={y(box.sg[0]) - y(box.sg[1]) + 4}
             rx={5}
@@ -135,7 +134,7 @@ function Point({ point, x, y, colour, shape, words, width }: PointProps) {
     return (
       <G>
         <Ellipse cx={cx} cy={cy} rx={rx} ry={ry} fill={colour} fillOpacity={0.18} stroke={colour} strokeWidth={1.5} {...dash} />
-        {shape === 'record' ? <Ellipse cx={cx} cy={cy} rx={3} ry={3} fill={colour} /> : <Rect x={cx - 3} y={cy - 3} width={6} height={6} fill={colour} />}
+        {shape === 'record' ? <Ellipse cx={cx} cy={cy} rx={3} ry={3} fill={colour} /> : <Rect transform={`translate(${cx - 3}, ${cy - 3})`} width={6} height={6} fill={colour} />}
         <Caption x={cx + rx + 4} y={cy + 4} colour={colour} words={words} width={width} />
       </G>
     );
@@ -175,7 +174,7 @@ interface CaptionProps {
 function Caption({ x, y, colour, words, anchor = 'start', mono = false, width }: CaptionProps) {
   const leaves = anchor === 'start' && width !== undefined && x + words.length * 6.6 > width;
   return (
-    <SvgText x={leaves ? width - 4 : x} y={y} fill={colour} fontSize={12} fontFamily={mono ? family.mono : family.text} textAnchor={leaves ? 'end' : anchor}>
+    <SvgText transform={`translate(${leaves ? width - 4 : x}, ${y})`} fill={colour} fontSize={12} fontFamily={mono ? family.mono : family.text} textAnchor={leaves ? 'end' : anchor}>
       {words}
     </SvgText>
   );

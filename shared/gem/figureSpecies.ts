@@ -89,5 +89,5 @@ function middle(range: Range | null): number {
 
 /** The same stone always shows the same texture. */
 function seedOf(id: string): number {
-  return [...id].reduce((hash, letter) => (Math.imul(hash, 31) + (letter.codePointAt(0) ?? 0)) | 0, 7);
+  return Array.from(id).reduce((hash, letter) => (Math.imul(hash, 31) + (letter.codePointAt(0) ?? 0)) | 0, 7);
 }

@@ -146,12 +146,12 @@ function pixel(parameters: FigureParameters, x: number, y: number): [number, num
 
 /** The darkest place within a hundredth of the field, in a picture fine enough to resolve a melatope. */
 function darkestNear(parameters: FigureParameters, x: number, y: number): number {
-  const fine = 601;
+  const fine = 301;
   const picture = computeFigure(parameters, fine);
   const [column, row] = [Math.round(((1 + x) * (fine - 1)) / 2), Math.round(((1 - y) * (fine - 1)) / 2)];
   let darkest = 255;
-  for (let dy = -3; dy <= 3; dy++) {
-    for (let dx = -3; dx <= 3; dx++) {
+  for (let dy = -2; dy <= 2; dy++) {
+    for (let dx = -2; dx <= 2; dx++) {
       const at = 4 * ((row + dy) * fine + column + dx);
       darkest = Math.min(darkest, (picture[at]! + picture[at + 1]! + picture[at + 2]!) / 3);
     }

@@ -5,7 +5,7 @@ import * as Ui from '@/components/ui';
 import { router } from './expoRouter';
 import { installBrowserParts, show } from './harness';
 
-jest.mock('expo-router', () => jest.requireActual('./expoRouter'));
+jest.mock('expo-router', () => jest.requireActual<typeof import('./expoRouter')>('./expoRouter'));
 
 beforeAll(installBrowserParts);
 beforeEach(() => jest.clearAllMocks());

@@ -3,14 +3,28 @@ import { SchoolShell } from '@/components/shell';
 import { Gallery } from './Gallery';
 import { installBrowserParts, setWidth, show } from './harness';
 
-jest.mock('expo-router', () => jest.requireActual('./expoRouter'));
+jest.mock('expo-router', () => jest.requireActual<typeof import('./expoRouter')>('./expoRouter'));
 
-beforeAll(installBrowserParts);
+beforeAll(() => {
+  installBrowserParts();
+  rememberStyles();
+});
 
 // Colour contrast is tested on the tokens themselves, in both schemes; jsdom computes no colours behind text.
 const options: axe.RunOptions = { rules: { 'color-contrast': { enabled: false } }, resultTypes: ['violations'] };
 
-// jsdom computes styles slowly, and the page holds every primitive there is.
+/** jsdom computes a style anew from every rule each time it is asked, and the rules ask many times; nothing changes meanwhile. */
+function rememberStyles(): void {
+  const compute = window.getComputedStyle.bind(window);
+  const known = new WeakMap<Element, CSSStyleDeclaration>();
+  window.getComputedStyle = (element, pseudo) => {
+    if (pseudo) return compute(element, pseudo);
+    const style = known.get(element) ?? compute(element);
+    known.set(element, style);
+    return style;
+  };
+}
+
 const timeoutMs = 240_000;
 
 it.each([['a phone', 390], ['a wide window', 1280]])(

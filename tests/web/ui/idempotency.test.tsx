@@ -4,7 +4,12 @@ import { claimKey, settleKey } from '@/components/api/idempotency';
 import * as Ui from '@/components/ui';
 import { show } from './harness';
 
-jest.mock('expo-router', () => jest.requireActual('./expoRouter'));
+jest.mock('expo-router', () => jest.requireActual<typeof import('./expoRouter')>('./expoRouter'));
+
+/** All that storage holds. */
+function stored(): [string, string | null][] {
+  return Object.keys(localStorage).map((key) => [key, localStorage.getItem(key)]);
+}
 
 let made = 0;
 beforeEach(() => {
@@ -16,7 +21,7 @@ beforeEach(() => {
 describe('the key of a write', () => {
   it('is stored before it is used and the same for the same intent', () => {
     const key = claimKey('loans/start', { code: 'K7', borrowerId: 'b' });
-    expect(Object.values({ ...localStorage }).join()).toContain(key);
+    expect(stored().join()).toContain(key);
     expect(claimKey('loans/start', { borrowerId: 'b', code: 'K7' })).toBe(key);
   });
 
@@ -28,7 +33,7 @@ describe('the key of a write', () => {
 
   it('does not store what was sent', () => {
     claimKey('loans/objection', { text: 'It was chipped before' });
-    expect(JSON.stringify({ ...localStorage })).not.toContain('chipped');
+    expect(JSON.stringify(stored())).not.toContain('chipped');
   });
 
   it('outlives a lost answer and a broken server, and ends with a final answer', () => {

@@ -11,7 +11,7 @@ import * as Ui from '@/components/ui';
 import { place, redirected } from './expoRouter';
 import { installBrowserParts, setWidth, show, signedInStore } from './harness';
 
-jest.mock('expo-router', () => jest.requireActual('./expoRouter'));
+jest.mock('expo-router', () => jest.requireActual<typeof import('./expoRouter')>('./expoRouter'));
 
 beforeAll(installBrowserParts);
 beforeEach(() => {

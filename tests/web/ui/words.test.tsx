@@ -6,7 +6,7 @@ import * as Ui from '@/components/ui';
 import { place } from './expoRouter';
 import { installBrowserParts, show } from './harness';
 
-jest.mock('expo-router', () => jest.requireActual('./expoRouter'));
+jest.mock('expo-router', () => jest.requireActual<typeof import('./expoRouter')>('./expoRouter'));
 
 beforeAll(installBrowserParts);
 
