@@ -105,7 +105,7 @@ function assertTestKey(req: Request): void {
   const header = req.get('authorization') ?? '';
   const basic = /^Basic (.+)$/i.exec(header)?.[1];
   const key = basic === undefined ? /^Bearer (.+)$/i.exec(header)?.[1] : Buffer.from(basic, 'base64').toString().split(':')[0];
-  if (key !== undefined && /^[sr]k_test_\w+$/.test(key)) return;
+  if (key !== undefined && /^[sr]k_test_[\w-]+$/.test(key)) return;
   const message = key === undefined || key === '' ? 'You did not provide an API key.' : 'Invalid API Key provided: only test keys are taken here.';
   throw new ApiError(401, { type: 'invalid_request_error', message });
 }
