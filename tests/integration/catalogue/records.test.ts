@@ -1,5 +1,6 @@
 import type { ProblemDocument } from '@shared/api/common';
 import type { KitView, StoneView } from '@shared/api/kits';
+import { DEFAULT_SETTINGS } from '@shared/evidence';
 import { catalogueOf, completeTopaz, type Catalogue } from '../../support/catalogue';
 import { as, createTestApp, type TestApp, type TestPerson } from '../../support/testApp';
 
@@ -36,8 +37,8 @@ it('builds a recorded value from its readings: the mean, an uncertainty that shr
   const three = await catalogue.readings(id, [1.57, 1.58].map((value) => ({ attribute: 'weight_ct' as const, value, instrumentId: of.balance })));
   const weight = valueOf(three, 'weight_ct');
   expect(weight).toMatchObject({ readingCount: 3, value: { value: expect.closeTo(1.57, 9) as number, n: 3, instrument: of.balance } });
-  // GUM 4.2, 5.1: scatter s = 0.01 over √3 beside the instrument's own half of u, which repeats do not reduce.
-  expect(weight?.value).toMatchObject({ u: expect.closeTo(Math.hypot(0.01 / Math.sqrt(3), 0.003), 6) as number });
+  // GUM 4.2, 5.1: scatter s = 0.01 over √3 beside the instrument's own share of u, which repeats do not reduce.
+  expect(weight?.value).toMatchObject({ u: expect.closeTo(Math.hypot(0.01 / Math.sqrt(3), 0.006 * DEFAULT_SETTINGS.instrumentShare), 6) as number });
 });
 
 it('derives the specific gravity from weighings, with the computed uncertainty', async () => {
