@@ -24,7 +24,7 @@ export function estimateRecord(readings: readonly ReadingInput[], settings: Engi
     if (taken.length === 0) return [];
     return [[attribute, isCategory(attribute) ? mostSeen(taken as CategoryReading[]) : estimateNumber(attribute, taken, settings)]];
   });
-  return Object.fromEntries(entries) as RecordedValues;
+  return Object.fromEntries(entries);
 }
 
 function estimateNumber(attribute: NumericAttribute, readings: readonly ReadingInput[], settings: EngineSettings): Estimate | OverLimit {

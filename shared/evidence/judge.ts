@@ -23,7 +23,7 @@ export function judge(record: PreparedRecord, pooled: PooledReadings, { present,
   const running = present.map((_, i) => Math.log10(own[i] ?? 1) - Math.log10(another[i] ?? 1));
   const steps = running.map((value, i) => value - (running[i - 1] ?? 0));
   const log10LR = running[running.length - 1] ?? 0;
-  const unexplained = present.filter((attribute) => !isCategory(attribute) && isUnexplained(record, pooled.numbers[attribute as NumericAttribute]));
+  const unexplained = present.filter((attribute) => !isCategory(attribute) && isUnexplained(record, pooled.numbers[attribute]));
   let verdict: VerdictWord = 'not_settled';
   if (log10LR >= Math.log10(rule.sameLR) && unexplained.length === 0) verdict = 'same';
   else if (log10LR <= Math.log10(rule.differentLR) && restsOnEnough(record, pooled, present, steps)) verdict = 'different';
@@ -41,7 +41,7 @@ function restsOnEnough(record: PreparedRecord, pooled: PooledReadings, present: 
 
 function deviatesTwice(record: PreparedRecord, pooled: PooledReadings, attribute: Attribute): boolean {
   if (isCategory(attribute)) return agreedElsewhere(record, pooled.categories[attribute] ?? []);
-  const numeric = attribute as NumericAttribute;
+  const numeric = attribute;
   const read = pooled.numbers[numeric];
   if (read === undefined) return false;
   const { farZ } = record.settings.rule;

@@ -109,7 +109,7 @@ function ownFactor(record: PreparedRecord, pooled: PooledReadings, attribute: At
   if (isCategory(attribute)) {
     return appearanceChance(record, attribute as 'uv_long' | 'uv_short' | 'pleochroism', pooled.categories[attribute] ?? [], record.model.row, true);
   }
-  const numeric = attribute as NumericAttribute;
+  const numeric = attribute;
   const read = pooled.numbers[numeric];
   if (read === undefined) return ONE;
   if (isRefractive(attribute)) return ownRefraction(record, attribute, read) ?? 'unled';

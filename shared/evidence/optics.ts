@@ -72,7 +72,8 @@ function seriesChance(record: PreparedRecord, readings: readonly CategoryReading
   // The echo keeps the least sure observer's chance, so that the order of the readings cannot matter.
   const once = agreeing ? Math.min(...readings.map(chance)) : 0;
   const echo = echoed(readings.length, rate, once, 1 / CATEGORY_VALUES[first.attribute].length);
-  return [0, 1, 2].map((b) => (1 - categoryEcho) * (result[b] ?? 0) + categoryEcho * (echo[b] ?? 0)) as unknown as ByBlunders;
+  const mix = (b: 0 | 1 | 2) => (1 - categoryEcho) * result[b] + categoryEcho * echo[b];
+  return [mix(0), mix(1), mix(2)];
 }
 
 function echoed(n: number, rate: number, once: number, flat: number): ByBlunders {
@@ -139,7 +140,7 @@ export function ownOptics(record: PreparedRecord, readings: CategoryReadings): B
       record, readings,
       (reading) => reactionChance(record, dark ? 'SR' : truth, reading.value as PolariscopeReaction, observerOf(reading)),
       (reading) => figureChance(record, figure, reading),
-      (reading) => signChance(record, categories.optic_sign === undefined ? model.row.opticSign : String(categories.optic_sign), reading),
+      (reading) => signChance(record, categories.optic_sign === undefined ? model.row.opticSign : categories.optic_sign, reading),
     );
     return { share, products };
   }));
@@ -207,5 +208,5 @@ export function appearanceChance(
 ): ByBlunders {
   const recorded = own ? record.categories[attribute] : undefined;
   const strengths = recorded === undefined ? strengthsOf(row, attribute) : { [recorded]: 1 };
-  return seriesChance(record, readings, (reading) => strengthChance(record.settings, attribute, strengths, String(reading.value)));
+  return seriesChance(record, readings, (reading) => strengthChance(record.settings, attribute, strengths, reading.value));
 }

@@ -67,7 +67,7 @@ export function poolNumbers(
   for (const reading of readings) {
     if ('airCt' in reading) reads.push(toNumberRead(reading, settings));
     else if (reading.value === 'over_limit') over.push(reading);
-    else if (typeof reading.value === 'number') reads.push(toNumberRead(reading as NumberReading, settings));
+    else if (typeof reading.value === 'number') reads.push(toNumberRead(reading, settings));
   }
   // Sums run in one order whatever order the readings came in, so that the digits do not depend on it.
   reads.sort((a, b) => a.value - b.value || a.u - b.u);

@@ -136,7 +136,7 @@ function figureSeen(stone: Stone): OpticFigure | null {
 
 /** A slip of the hand: two digits changed places, one digit read wrong, or the point in the wrong place. */
 export function slip(value: number, decimals: number, random: Random): number {
-  const digits = [...value.toFixed(decimals).replace('.', '')];
+  const digits = Array.from(value.toFixed(decimals).replace('.', ''));
   const kind = random.unit();
   if (kind < 0.4 && digits.length > 1) {
     const i = Math.floor(random.unit() * (digits.length - 1));

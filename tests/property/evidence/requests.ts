@@ -15,8 +15,8 @@ export const recordedStones: fc.Arbitrary<RecordedStone> = fc.record({
   lacks: fc.uniqueArray(fc.constantFrom<Attribute>('length_mm', 'height_mm', 'sg', 'weight_ct', 'ri_spot', 'polariscope'), { maxLength: 2 }),
 }).map(({ row, colour, flags, length, t, lacks }) => {
   const values = valuesOf(row, length, t);
-  for (const attribute of lacks) delete values[attribute];
-  return { species: row.id, flags, values, ...(colour === undefined ? {} : { colour }) };
+  const kept = Object.fromEntries(Object.entries(values).filter(([attribute]) => !(lacks as readonly string[]).includes(attribute)));
+  return { species: row.id, flags, values: kept, ...(colour === undefined ? {} : { colour }) };
 });
 
 function valuesOf(row: SpeciesRow, length: number, t: number): RecordedStone['values'] {
@@ -42,7 +42,7 @@ export const readings: fc.Arbitrary<ReadingInput> = fc.oneof(
   ...(Object.keys(CATEGORY_VALUES) as (keyof typeof CATEGORY_VALUES)[]).map((attribute) => fc.record({
     attribute: fc.constant(attribute), value: fc.constantFrom(...CATEGORY_VALUES[attribute]), observer: fc.constantFrom('instructor', 'student'),
   })),
-) as fc.Arbitrary<ReadingInput>;
+);
 
 export const requests: fc.Arbitrary<VerdictRequest> = fc.record({
   recorded: recordedStones,

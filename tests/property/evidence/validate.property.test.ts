@@ -6,14 +6,14 @@ import { requests } from './requests';
 const anything = fc.anything({ withBigInt: true, withDate: true, withMap: true, withNullPrototype: true, withTypedArray: true, maxDepth: 4 });
 
 /** A good request with one place overwritten by something else. */
-const broken = fc.tuple(requests, fc.constantFrom('species', 'values', 'flags', 'readings', 'reading', 'value', 'u', 'colour'), anything).map(([request, place, other]) => {
+const broken: fc.Arbitrary<unknown> = fc.tuple(requests, fc.constantFrom('species', 'values', 'flags', 'readings', 'reading', 'value', 'u', 'colour'), anything).map(([request, place, other]) => {
   const copy = JSON.parse(JSON.stringify(request)) as { recorded: Record<string, unknown>; readings: unknown };
   const [first] = copy.readings as Record<string, unknown>[];
   if (place === 'readings') copy.readings = other;
   else if (place === 'reading') (copy.readings as unknown[])[0] = other;
   else if ((place === 'value' || place === 'u') && first) first[place] = other;
   else copy.recorded[place] = other;
-  return copy as unknown;
+  return copy;
 });
 
 describe('validation of a verdict request', () => {
