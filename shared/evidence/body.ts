@@ -53,7 +53,7 @@ export interface SubstituteSizes {
 }
 
 /** A case this much less probable than the best with as many blunders cannot matter: one blunder more would explain it better. */
-const NEGLIGIBLE = 1e-9;
+const NEGLIGIBLE = 1e-8;
 
 export function substituteSizes(record: PreparedRecord, body: BodyReadings): SubstituteSizes {
   const { cutting } = record.settings;
@@ -68,7 +68,9 @@ export function substituteSizes(record: PreparedRecord, body: BodyReadings): Sub
   const best: [number, number, number] = [0, 0, 0];
   const cases = [...matched.cases, ...unmatched.cases];
   for (const entry of cases) best[entry.blunders as 0 | 1 | 2] = Math.max(best[entry.blunders as 0 | 1 | 2], entry.weight);
-  return { prefix, cases: cases.filter((entry) => entry.weight > NEGLIGIBLE * best[entry.blunders as 0 | 1 | 2]) };
+  // A case must also stand beside the best that has a blunder left to spend on the weight itself.
+  const least = NEGLIGIBLE * Math.max(best[0], best[1]);
+  return { prefix, cases: cases.filter((entry) => entry.weight > Math.max(least, NEGLIGIBLE * best[entry.blunders as 0 | 1 | 2])) };
 }
 
 interface OpenCase { blunders: number; weight: number; log: number; variance: number; width: number }

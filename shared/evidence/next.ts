@@ -15,7 +15,7 @@ import { GROUP_OF, isCategory } from './settings';
 /** An attribute is not proposed again once it has been read this often: people decide then. */
 const MOST_READINGS_OF_ONE = 3;
 /** Species less likely than this to be the stone in hand are left out while outcomes are explored. */
-const SMALLEST_SHARE = 1e-4;
+const SMALLEST_SHARE = 1e-3;
 /** Below this chance of settling anything, readings are ranked by what they tell. */
 const SETTLES_SELDOM = 0.05;
 

@@ -12,6 +12,15 @@ const UNTYPICAL = 0.3;
  * name no strength allow all alike.
  */
 export function strengthsOf(row: SpeciesRow, attribute: StrengthAttribute): Readonly<Record<string, number>> {
+  const key = `${attribute}|${row.id}`;
+  const found = known.get(key) ?? parseStrengths(row, attribute);
+  known.set(key, found);
+  return found;
+}
+
+const known = new Map<string, Readonly<Record<string, number>>>();
+
+function parseStrengths(row: SpeciesRow, attribute: StrengthAttribute): Readonly<Record<string, number>> {
   const scale: readonly string[] = CATEGORY_VALUES[attribute];
   const words = attribute === 'uv_long' ? row.uvLong : attribute === 'uv_short' ? row.uvShort : row.pleochroism;
   const found = scale.map((word, i) => ({ i, at: words.indexOf(word) })).filter(({ at }) => at >= 0).map(({ i }) => i);
