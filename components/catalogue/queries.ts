@@ -1,7 +1,7 @@
 import { useInfiniteQuery, useMutation, useQuery, useQueryClient } from '@tanstack/react-query';
 import type { Page } from '@shared/api/common';
 import type { SpeciesSummary } from '@shared/api/evidence';
-import type { IntakeReadingsRequest, KitChange, KitPlace, KitRow, KitView, NewKitRequest, NewStoneRequest, StoneChange, StoneView, StrikeRequest } from '@shared/api/kits';
+import type { IntakeReadingsRequest, KitChange, KitPlace, KitRow, KitView, NewKitRequest, NewStoneRequest, PhotoView, StoneChange, StoneView, StrikeRequest } from '@shared/api/kits';
 import type { CustodyEventView } from '@shared/api/loans';
 import { stale, useApi, useIdempotentMutation } from '@/components/api';
 
@@ -101,7 +101,7 @@ export function usePhotoMutation(stoneId: string) {
       form.append('photo', photo);
       form.append('note', note);
       if (loanId !== undefined) form.append('loanId', loanId);
-      return api.post<StoneView>(`/stones/${stoneId}/photos`, form);
+      return api.post<PhotoView>(`/stones/${stoneId}/photos`, form);
     },
     onSuccess: changed,
   });
@@ -110,5 +110,5 @@ export function usePhotoMutation(stoneId: string) {
 export function useRemovePhotoMutation() {
   const api = useApi();
   const changed = useCatalogueChanged();
-  return useMutation({ mutationFn: (photoId: string) => api.delete<void>(`/photos/${photoId}`), onSuccess: changed });
+  return useMutation({ mutationFn: (photoId: string) => api.delete<unknown>(`/photos/${photoId}`), onSuccess: changed });
 }

@@ -85,7 +85,7 @@ export interface ReadingView {
   struck: { reason: string; by: PersonRef; at: string } | null;
 }
 
-/** POST /stones/:stoneId/photos (multipart: the file as `photo`, a `note`); GET and DELETE /photos/:photoId; GET /photos/:photoId/thumbnail (staff) */
+/** POST /stones/:stoneId/photos (multipart: the file as `photo`, a `note`, the `loanId` whose return it documents) answers a PhotoView; GET and DELETE /photos/:photoId; GET /photos/:photoId/thumbnail (staff) */
 export interface PhotoView { id: string; url: string; thumbnailUrl: string; width: number; height: number; note: string; createdAt: string }
 
 /** POST /kits */

@@ -18,7 +18,7 @@ export const photosRoutes = [
     transaction: 'none', files: { field: 'photo', maxCount: 1, maxBytes: 2 * PHOTO_MAX_BYTES },
     request: PhotoFormDto, response: schema<PhotoView>('PhotoView'), status: 201, idempotent: false,
     handle: ({ db, services, actor, params, body, files, now }) =>
-      addPhoto(db, services.storage, actor, { stoneId: params.stoneId, file: files[0], note: body.note ?? '' }, now),
+      addPhoto(db, services.storage, actor, { stoneId: params.stoneId, file: files[0], note: body.note ?? '', loanId: body.loanId ?? null }, now),
   }),
   route({
     method: 'get', path: '/photos/:photoId', permission: 'photo:read', summary: 'A photo',

@@ -7,6 +7,7 @@ import type { Database } from '@/server/database/data-source';
 import { withSchool } from '@/server/database/school';
 import { blindReason, refuseBlind } from '@/server/features/bench/blindness';
 import { recordCustody } from '@/server/features/custody/custody.service';
+import type { Stone } from '@/server/features/stones/stone.entity';
 import { findStone } from '@/server/features/stones/stones.queries';
 import { invalid, notFound } from '@/server/http/problem';
 import type { SchoolActor, UploadedFile } from '@/server/http/route';
@@ -16,15 +17,15 @@ import { storageKey, thumbnailKey } from '@/server/storage/storageKey';
 import { Photo } from './photo.entity';
 import { photoView } from './photo.queries';
 
-interface Upload { readonly stoneId: string; readonly file: UploadedFile | undefined; readonly note: string }
+interface Upload { readonly stoneId: string; readonly file: UploadedFile | undefined; readonly note: string; readonly loanId: string | null }
 
 /**
  * Keeps a clean copy of an uploaded photo. No transaction is open while the picture is worked on or stored; where the
  * row cannot be written, the files are taken away again.
  */
 export async function addPhoto(db: Database, storage: StoragePort, actor: SchoolActor, upload: Upload, now: Date): Promise<PhotoView> {
-  const { stoneId, file, note } = upload;
-  await withSchool(db, actor, (tx) => openStone(tx, actor, stoneId));
+  const { stoneId, file, note, loanId } = upload;
+  await withSchool(db, actor, (tx) => stoneToPicture(tx, actor, upload));
   if (file === undefined) throw invalid('photo', 'Choose a photo to send.');
   const picture = await cleaned(file.bytes);
   const key = storageKey(actor.schoolId, 'photos', picture.ending);
@@ -32,10 +33,10 @@ export async function addPhoto(db: Database, storage: StoragePort, actor: School
     await storage.put(key, picture.large.content, picture.mime);
     await storage.put(thumbnailKey(key), picture.small.content, picture.mime);
     return await withSchool(db, actor, async (tx) => {
-      const stone = await openStone(tx, actor, stoneId);
+      const stone = await stoneToPicture(tx, actor, upload);
       const { width, height } = picture.large;
       const row = tx.create(Photo, {
-        id: randomUUID(), schoolId: actor.schoolId, stoneId, loanId: null, storageKey: key, mime: picture.mime, width, height,
+        id: randomUUID(), schoolId: actor.schoolId, stoneId, loanId, storageKey: key, mime: picture.mime, width, height,
         note: note.trim(), createdBy: actor.accountId, createdAt: now, removedAt: null,
       });
       await tx.insert(Photo, row);
@@ -55,6 +56,16 @@ async function cleaned(bytes: Buffer): Promise<ProcessedPhoto> {
     if (error instanceof PhotoRefused) throw invalid('photo', error.message, `photo_${error.fault}`);
     throw error;
   }
+}
+
+/** A second reader, blind to the record, may still show what they see; the borrower of a kit adds nothing to its evidence. */
+async function stoneToPicture(tx: EntityManager, actor: SchoolActor, { stoneId, loanId }: Upload): Promise<Stone> {
+  const stone = await findStone(tx, stoneId);
+  if ((await blindReason(tx, actor.accountId, stone.kitId)) === 'own_loan') await refuseBlind(tx, actor.accountId, stone.kitId);
+  if (loanId === null) return stone;
+  const held = await tx.query<unknown[]>('SELECT 1 FROM loan_stone WHERE loan_id = $1 AND stone_id = $2', [loanId, stoneId]);
+  if (held.length === 0) throw invalid('loanId', 'This stone is not part of that loan. Open it from the loan’s check and try again.');
+  return stone;
 }
 
 async function openStone(tx: EntityManager, actor: SchoolActor, stoneId: string) {

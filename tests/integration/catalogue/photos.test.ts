@@ -99,6 +99,22 @@ it('shows no photo to students, other schools or the kit’s borrower on the sta
   await as(test, admin).get(`/photos/${photo.id}`).expect(200);
 });
 
+it('ties a photo of a return to a loan that holds the stone, and to no other', async () => {
+  const catalogue = catalogueOf(test, admin);
+  const [kit, other] = [await catalogue.kit('501'), await catalogue.kit('502')];
+  const stone = await catalogue.stone(kit.id, 'A');
+  const [mine, foreign] = await Promise.all([kit, other].map(async ({ id }) => (await test.rows<{ id: string }>(
+    `INSERT INTO loan (school_id, kit_id, borrower_id, state, reserved_at, reserved_until, out_at, due_at, deposit_minor, currency)
+     VALUES ($1, $2, $3, 'checking', now(), now(), now(), now(), 0, 'EUR') RETURNING id`, [school, id, student.accountId]))[0]?.id ?? ''));
+  await test.rows('INSERT INTO loan_stone (school_id, loan_id, stone_id, slot) VALUES ($1, $2, $3, $4)', [school, mine, stone.id, 'A']);
+  const send = async (loanId: string) => supertest(test.app).post(`/api/v1/stones/${stone.id}/photos`).set('Authorization', `Bearer ${admin.token}`)
+    .attach('photo', await camera(), 'chip.jpg').field('loanId', loanId);
+  expect((await send(mine ?? '')).status).toBe(201);
+  const refused = await send(foreign ?? '');
+  expect([refused.status, (refused.body as ProblemDocument).errors[0]?.field]).toEqual([422, 'loanId']);
+  expect(await test.rows('SELECT loan_id FROM photo WHERE stone_id = $1', [stone.id])).toEqual([{ loan_id: mine }]);
+});
+
 it('takes a removed photo out of sight everywhere', async () => {
   const photo = (await upload(await camera(), 'a.jpg').expect(201)).body as PhotoView;
   const shown = async (): Promise<string[]> => ((await as(test, admin).get(`/stones/${stoneId}`)).body as StoneView).photos.map(({ id }) => id);
