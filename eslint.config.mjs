@@ -59,7 +59,7 @@ export default tseslint.config(
       'react-native-a11y/has-valid-accessibility-live-region': 'error',
       'react-native-a11y/has-valid-important-for-accessibility': 'error',
       'react-native-a11y/no-nested-touchables': 'error',
-      'screen/raw-text': ['error', { textElements: '(Text|Mono|Heading|TSpan)$|^(style|title|option)$' }],
+      'screen/raw-text': ['error', { textElements: '(Text|Mono|Heading|TSpan)$|^(Notice|EmptyState|style|title|option)$' }],
       'screen/named-controls': 'error',
     },
   },

@@ -11,7 +11,7 @@ import { StonePanel } from './StonePanel';
 
 /** One check: scan the kit, then each jar, then read stone by stone. Wide screens show the stone beside the list. */
 export function BenchCheckScreen() {
-  const { loanId = '', stone: stoneParam } = useLocalSearchParams<{ loanId: string; stone?: string }>();
+  const { loanId, stone: stoneParam } = useLocalSearchParams<{ loanId: string; stone?: string }>();
   const check = useBenchQuery(loanId);
   const { phone } = useBreakpoints();
   const view = check.data;

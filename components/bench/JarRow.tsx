@@ -13,19 +13,17 @@ export function JarRow({ loanId, stone, chosen, last }: { loanId: string; stone:
   const mayNote = hasRole('instructor') && stone.ending === null;
   const said = stone.backState !== null && stone.backState !== 'seen' ? `Said at return: ${stone.backState}${stone.backCondition ? `, ${stone.backCondition}` : ''}` : '';
   return (
-    <View style={styles.jar}>
-      <View style={styles.row}>
-        <ListRow
-          inset
-          rule={!last}
-          chosen={chosen}
-          to={`/bench/${loanId}?stone=${stone.stoneId}`}
-          before={<Mono strong>{stone.slot}</Mono>}
-          title={stone.neutralDescription}
-          detail={said || stone.marks || 'no marks noted'}
-          after={<StateBadge {...stoneBadge(stone)} />}
-        />
-      </View>
+    <View>
+      <ListRow
+        inset
+        rule={!last}
+        chosen={chosen}
+        to={`/bench/${loanId}?stone=${stone.stoneId}`}
+        before={<Mono strong>{stone.slot}</Mono>}
+        title={stone.neutralDescription}
+        detail={said || stone.marks || 'no marks noted'}
+        after={<StateBadge {...stoneBadge(stone)} />}
+      />
       {mayNote && stone.benchState !== 'seen' ? <NoteJar loanId={loanId} stone={stone} /> : null}
     </View>
   );
@@ -40,7 +38,7 @@ export function NoteJar({ loanId, stone }: { loanId: string; stone: BenchStone }
   const save = () => jar.mutate({ stoneId: stone.stoneId, state, condition }, { onSuccess: () => setOpen(false) });
   return (
     <View style={styles.note}>
-      <Button kind="quiet" label="Note" accessibleLabel={`Note what you find of jar ${stone.slot}`} haspopup="dialog" onPress={() => setOpen(true)} />
+      <Button kind="quiet" label="Missing or damaged?" accessibleLabel={`Note what you find of jar ${stone.slot}`} haspopup="dialog" onPress={() => setOpen(true)} />
       <Dialog open={open} onClose={() => setOpen(false)} title={`Jar ${stone.slot}`} action={<Button label="Save" busy={jar.isPending} onPress={save} />}>
         <Stack gap="lg">
           <RadioField
@@ -62,7 +60,5 @@ export function NoteJar({ loanId, stone }: { loanId: string; stone: BenchStone }
 }
 
 const styles = StyleSheet.create({
-  jar: { flexDirection: 'row', alignItems: 'center' },
-  row: { flex: 1, minWidth: 0 },
-  note: { paddingRight: space.sm },
+  note: { alignItems: 'flex-end', paddingHorizontal: space.side },
 });

@@ -1,8 +1,11 @@
+import { useEffect, useRef } from 'react';
+import type { Text as NativeText } from 'react-native';
 import type { BenchStone, BenchView } from '@shared/api/bench';
 import { useSession } from '@/components/api';
 import { ReadingForm } from '@/components/readings/ReadingForm';
 import { useInstrumentsQuery } from '@/components/readings/instruments';
 import { Card, Failed, Heading, LinkButton, Loading, Notice, Row, Stack, StateBadge, Text, useAnnounce } from '@/components/ui';
+import { FigureOfSpecies } from '@/components/ui/FigureOfSpecies';
 import { nextStone } from './BenchCheckScreen';
 import { NoteJar } from './JarRow';
 import { OpenedRecord } from './OpenedRecord';
@@ -14,22 +17,31 @@ import { stoneBadge, verdictBadge } from './words';
 export function StonePanel({ loanId, view, stone }: { loanId: string; view: BenchView; stone: BenchStone }) {
   const { hasRole } = useSession();
   const after = nextStone(view, stone.stoneId);
+  const heading = useRef<NativeText>(null);
+  const opened = stone.opened !== null;
+  const wasOpened = useRef(opened);
+  // When the record opens, eyes and screen readers start at its head, not where the form was.
+  useEffect(() => {
+    if (opened && !wasOpened.current) heading.current?.focus();
+    wasOpened.current = opened;
+  }, [opened]);
+  const goesOn = after !== undefined && after.stoneId !== stone.stoneId && stone.step !== 'read' && stone.step !== 'scan';
+  const next = goesOn ? <LinkButton kind="primary" label={`Next: jar ${after.slot}`} to={`/bench/${loanId}?stone=${after.stoneId}`} /> : null;
   return (
     <Stack gap="lg">
-      <Row justify="space-between" align="flex-start" wrap>
-        <Stack gap="xxs">
-          <Heading level={2}>{stone.opened ? `Jar ${stone.slot}: ${stone.opened.speciesName}` : `Jar ${stone.slot}`}</Heading>
+      <Row align="flex-start" gap="lg">
+        {stone.opened ? <FigureOfSpecies species={stone.opened.species} size={76} /> : null}
+        <Stack gap="xxs" style={{ flex: 1, minWidth: 0 }}>
+          <Heading level={2} focusable ref={heading}>{stone.opened ? `Jar ${stone.slot}: ${stone.opened.speciesName}` : `Jar ${stone.slot}`}</Heading>
           <Text tone="soft">{stone.neutralDescription}</Text>
           {stone.marks ? <Text size="quiet" tone="soft">{`Marks: ${stone.marks}`}</Text> : null}
+          <StateBadge {...stoneBadge(stone)} />
         </Stack>
-        <StateBadge {...stoneBadge(stone)} />
       </Row>
+      {next}
       {stone.opened ? <OpenedRecord loanId={loanId} stone={stone} opened={stone.opened} /> : null}
       {hasRole('instructor') ? <Entry loanId={loanId} stone={stone} /> : null}
       <StoneActions loanId={loanId} stone={stone} />
-      {after && after.stoneId !== stone.stoneId && stone.step !== 'read' ? (
-        <LinkButton kind="primary" label={`Next: jar ${after.slot}`} to={`/bench/${loanId}?stone=${after.stoneId}`} />
-      ) : null}
     </Stack>
   );
 }

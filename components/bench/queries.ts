@@ -58,7 +58,7 @@ export const useBenchStrikeMutation = (loanId: string) =>
   });
 
 export const useSecondReadingMutation = (loanId: string, stoneId: string) =>
-  useBenchMutation<void>(loanId, 'second', { path: () => `/stones/${stoneId}/second-reading`, body: () => undefined });
+  useBenchMutation<undefined>(loanId, 'second', { path: () => `/stones/${stoneId}/second-reading`, body: () => undefined });
 
 export const useAcceptStoneMutation = (loanId: string, stoneId: string) =>
   useBenchMutation<AcceptStoneRequest>(loanId, 'accept', { path: () => `/stones/${stoneId}/acceptance`, body: (request) => request });

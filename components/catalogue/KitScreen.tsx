@@ -15,7 +15,7 @@ type Part = 'stones' | 'labels' | 'custody' | 'kit';
 
 /** One kit: its stones and what their records lack, its labels, its chain of events, its own details. */
 export function KitScreen() {
-  const { kitId = '' } = useLocalSearchParams<{ kitId: string }>();
+  const { kitId } = useLocalSearchParams<{ kitId: string }>();
   const kit = useKitQuery(kitId);
   return (
     <RequireRole roles={['instructor', 'admin']}>

@@ -7,7 +7,7 @@ import { StoneForm } from './StoneForm';
 
 /** A new stone of a kit, in the first free jar. */
 export function NewStoneScreen() {
-  const { kitId = '' } = useLocalSearchParams<{ kitId: string }>();
+  const { kitId } = useLocalSearchParams<{ kitId: string }>();
   const kit = useKitQuery(kitId);
   const create = useNewStoneMutation(kitId);
   const taken = new Set(kit.data?.stones.filter((stone) => stone.standing !== 'retired').map((stone) => stone.slot));

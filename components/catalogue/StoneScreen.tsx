@@ -17,7 +17,7 @@ type Part = 'record' | 'photos' | 'custody' | 'stone';
 
 /** One stone: its record with the readings behind it, intake, photos, custody, details. */
 export function StoneScreen() {
-  const { stoneId = '' } = useLocalSearchParams<{ stoneId: string }>();
+  const { stoneId } = useLocalSearchParams<{ stoneId: string }>();
   const stone = useStoneQuery(stoneId);
   return (
     <RequireRole roles={['instructor', 'admin']}>

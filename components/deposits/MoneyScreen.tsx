@@ -67,7 +67,7 @@ function Deposits({ view }: { view: MoneyView }) {
           { key: 'kit', header: 'Kit', cell: (row) => <Mono strong>{row.kitNumber}</Mono> },
           { key: 'who', header: 'Borrower', cell: (row) => row.borrowerName },
           { key: 'amount', header: 'Deposit', align: 'right', cell: (row) => <Money amountMinor={row.amountMinor} currency={row.currency} /> },
-          { key: 'state', header: 'State', cell: (row) => depositWords[row.state as keyof typeof depositWords] ?? row.state },
+          { key: 'state', header: 'State', cell: (row) => wordFor(row.state) },
           { key: 'until', header: 'Hold lapses', cell: (row) => (row.captureBefore ? formatMoment(row.captureBefore, { timeZone }) : '–') },
           { key: 'object', header: 'Payment object', wideOnly: true, cell: (row) => <Mono size="small">{row.paymentIntentId ?? '–'}</Mono> },
         ]}
@@ -75,3 +75,5 @@ function Deposits({ view }: { view: MoneyView }) {
     </Card>
   );
 }
+
+const wordFor = (state: string): string => Object.entries(depositWords).find(([name]) => name === state)?.[1] ?? state;

@@ -7,7 +7,7 @@ import { StaffLoan } from './StaffLoan';
 
 /** One loan: the borrower's blind view, or the staff's view of somebody else's loan. */
 export function LoanScreen() {
-  const { loanId = '', payment } = useLocalSearchParams<{ loanId: string; payment?: string }>();
+  const { loanId, payment } = useLocalSearchParams<{ loanId: string; payment?: string }>();
   const { hasRole } = useSession();
   const staff = hasRole('admin', 'instructor');
   const staffLoan = useStaffLoanQuery(loanId, staff);

@@ -13,7 +13,7 @@ export interface Said { state: BackState; condition: string }
 
 /** Bringing back: the kit's jars scanned one by one; what is missing or damaged is said, not guessed. */
 export function ReturnScreen() {
-  const { loanId = '' } = useLocalSearchParams<{ loanId: string }>();
+  const { loanId } = useLocalSearchParams<{ loanId: string }>();
   const loan = useLoanQuery(loanId);
   return (
     <PageFrame title={loan.data ? `Return kit ${loan.data.kitNumber}` : 'Return a kit'} back={{ label: 'Loan', to: `/loans/${loanId}` }} lead="Scan each jar, with its own stone in it, then put the kit in the return box.">

@@ -37,7 +37,7 @@ export function useInviteMutation() {
 export function useWithdrawMutation() {
   const api = useApi();
   const changed = usePeopleChanged();
-  return useMutation({ mutationFn: (id: string) => api.delete<void>(`/people/invitations/${id}`), onSuccess: changed });
+  return useMutation({ mutationFn: (id: string) => api.delete<unknown>(`/people/invitations/${id}`), onSuccess: changed });
 }
 
 export function useChangeRolesMutation(accountId: string) {
@@ -49,5 +49,5 @@ export function useChangeRolesMutation(accountId: string) {
 export function useEndMembershipMutation(accountId: string) {
   const api = useApi();
   const changed = usePeopleChanged();
-  return useMutation({ mutationFn: () => api.delete<void>(`/people/${accountId}`), onSuccess: changed });
+  return useMutation({ mutationFn: () => api.delete<unknown>(`/people/${accountId}`), onSuccess: changed });
 }

@@ -1,4 +1,4 @@
-import { useId, useRef, useState } from 'react';
+import { useId, useRef, useState, type KeyboardEvent } from 'react';
 import type { Attribute, StoneFlag } from '@shared/api/evidence';
 import { INSTRUMENT_FOR } from '@shared/api/instruments';
 import type { InstrumentView } from '@shared/api/instruments';
@@ -10,6 +10,7 @@ import { cautionFor } from './cautions';
 import { draftFaults, emptyDraft, faultsOfServer, isBlank, toEntries, type DraftFaults, type DraftReading } from './draft';
 import { useChosenInstruments } from './instruments';
 import { InstrumentLine } from './InstrumentLine';
+import { focusNextReading } from './ReadingInput';
 import { ReadingLine } from './ReadingLine';
 
 export interface ReadingFormProps {
@@ -64,18 +65,20 @@ export function ReadingForm({ attributes, flags, register, submitLabel, busy, er
     <Form onSubmit={submit} label="Readings">
       {caution ? <Notice kind="caution" title={caution.title}>{caution.text}</Notice> : null}
       {flags.includes('fragile') ? <Notice kind="caution" title="Fragile stone">It cleaves or chips easily: no drop, no shock, no tweezers at the girdle.</Notice> : null}
-      <Stack gap="md">
-        {drafts.map((draft, index) => (
-          <ReadingLine
-            key={draft.key}
-            id={`${formId}${draft.key}`}
-            draft={draft}
-            again={drafts.slice(0, index).some((one) => one.attribute === draft.attribute)}
-            faults={shown}
-            onChange={(part) => change(draft.key, part)}
-          />
-        ))}
-      </Stack>
+      <div onKeyDown={enterGoesOn}>
+        <Stack gap="md">
+          {drafts.map((draft, index) => (
+            <ReadingLine
+              key={draft.key}
+              id={`${formId}${draft.key}`}
+              draft={draft}
+              again={drafts.slice(0, index).some((one) => one.attribute === draft.attribute)}
+              faults={shown}
+              onChange={(part) => change(draft.key, part)}
+            />
+          ))}
+        </Stack>
+      </div>
       <AddReading drafts={drafts} onAdd={add} />
       <InstrumentLine kinds={kinds} register={register} chosen={chosen} onChoose={choose} />
       {nothing ? <Text tone="different" role="alert">Enter at least one reading, then hand it in.</Text> : null}
@@ -83,4 +86,9 @@ export function ReadingForm({ attributes, flags, register, submitLabel, busy, er
       <Button label={submitLabel} submits busy={busy} />
     </Form>
   );
+}
+
+/** Enter in a field goes to the next one; in the last it hands the entry in, as forms do. */
+function enterGoesOn(event: KeyboardEvent<HTMLElement>): void {
+  if (event.key === 'Enter' && focusNextReading()) event.preventDefault();
 }

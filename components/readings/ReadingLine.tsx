@@ -1,8 +1,9 @@
 import { StyleSheet, View } from 'react-native';
 import { space, useBreakpoints } from '@/components/theme';
-import { CheckboxField, NumberField, SegmentedField, SelectField, Stack, Text } from '@/components/ui';
+import { CheckboxField, SegmentedField, SelectField, Stack, Text } from '@/components/ui';
 import { attributeWords, categoryOptions, isCategory } from './attributes';
 import type { DraftFaults, DraftReading } from './draft';
+import { ReadingInput } from './ReadingInput';
 
 export interface ReadingLineProps {
   id: string;
@@ -22,9 +23,9 @@ export function ReadingLine({ draft, again, faults, onChange }: ReadingLineProps
   if (words.entry === 'weighing') return <WeighingLine draft={draft} label={label} fault={fault} onChange={onChange} />;
   return (
     <Stack gap="xs">
-      <NumberField
+      <ReadingInput
         label={label}
-        {...(words.unit === undefined ? {} : { unit: words.unit })}
+        unit={words.unit}
         value={draft.overLimit ? '' : draft.value}
         error={fault('value')}
         onChange={(value) => onChange({ value, overLimit: false })}
@@ -42,7 +43,7 @@ function CategoryLine({ draft, label, error, onChange }: Pick<ReadingLineProps, 
   const options = categoryOptions(draft.attribute);
   const long = options.length > 4 && phone;
   const field = { label, options, value: draft.value, error, onChange: (value: string) => onChange({ value }) };
-  return long ? <SelectField {...field} placeholder="not looked at" /> : <SegmentedField {...field} />;
+  return <div data-reading>{long ? <SelectField {...field} placeholder="not looked at" /> : <SegmentedField {...field} />}</div>;
 }
 
 function WeighingLine({ draft, label, fault, onChange }: Pick<ReadingLineProps, 'draft' | 'onChange'> & { label: string; fault: (field: string) => string | undefined }) {
@@ -54,13 +55,13 @@ function WeighingLine({ draft, label, fault, onChange }: Pick<ReadingLineProps, 
       </Text>
       <View style={styles.three}>
         <View style={styles.part}>
-          <NumberField label="In air" unit="ct" value={draft.airCt} error={fault('airCt')} onChange={(airCt) => onChange({ airCt })} />
+          <ReadingInput label="In air" unit="ct" value={draft.airCt} error={fault('airCt')} onChange={(airCt) => onChange({ airCt })} />
         </View>
         <View style={styles.part}>
-          <NumberField label="In water" unit="ct" value={draft.waterCt} error={fault('waterCt')} onChange={(waterCt) => onChange({ waterCt })} />
+          <ReadingInput label="In water" unit="ct" value={draft.waterCt} error={fault('waterCt')} onChange={(waterCt) => onChange({ waterCt })} />
         </View>
         <View style={styles.part}>
-          <NumberField label="Water" unit="°C" value={draft.waterC} error={fault('waterC')} onChange={(waterC) => onChange({ waterC })} />
+          <ReadingInput label="Water" unit="°C" value={draft.waterC} error={fault('waterC')} onChange={(waterC) => onChange({ waterC })} />
         </View>
       </View>
     </View>

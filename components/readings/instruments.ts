@@ -33,14 +33,14 @@ export function useChosenInstruments(register: readonly InstrumentView[]): { cho
     choose: (kind, id) => {
       const next = { ...remembered, [kind]: id };
       setRemembered(next);
-      globalThis.localStorage?.setItem(storageKey, JSON.stringify(next));
+      globalThis.localStorage.setItem(storageKey, JSON.stringify(next));
     },
   };
 }
 
 function load(): Instruments {
   try {
-    return JSON.parse(globalThis.localStorage?.getItem(storageKey) ?? '{}') as Instruments;
+    return JSON.parse(globalThis.localStorage.getItem(storageKey) ?? '{}') as Instruments;
   } catch {
     return {};
   }

@@ -6,7 +6,7 @@ import { Scanned } from './Scanned';
 
 /** Where a label's own link leads, opened by a phone's camera: the same as scanning it here. */
 export function LabelLinkScreen() {
-  const { code = '' } = useLocalSearchParams<{ code: string }>();
+  const { code } = useLocalSearchParams<{ code: string }>();
   const reading = parseLabelCode(code);
   if ('reason' in reading) {
     return (

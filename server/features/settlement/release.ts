@@ -22,7 +22,7 @@ export async function releaseAll(tx: EntityManager, loan: Loan, actorId: string,
   await settleDeposit(tx, loan.id, { keepMinor: 0, actorId, now });
   const [kit] = await tx.query<{ kitNumber: string; neutralTitle: string }[]>(
     'SELECT number AS "kitNumber", neutral_title AS "neutralTitle" FROM kit WHERE id = $1', [loan.kitId]);
-  const [payment] = await tx.query<{ mode: 'hold' | 'charge' }[]>(`SELECT mode FROM payment WHERE loan_id = $1 AND state <> 'cancelled'`, [loan.id]);
+  const [payment] = await tx.query<{ mode: 'hold' | 'charge' }[]>(`SELECT CASE WHEN secured_at IS NULL THEN mode ELSE 'charge' END AS mode FROM payment WHERE loan_id = $1 AND state <> 'cancelled'`, [loan.id]);
   if (kit === undefined) return;
   await queueMail(tx, {
     schoolId: loan.schoolId, toAccountId: loan.borrowerId, template: 'deposit-released', dedupeKey: `deposit-released:${loan.id}`,
