@@ -17,7 +17,7 @@ export async function bootstrap(options: { adminUrl: string; database: string; p
   const client = new Client({ connectionString: options.adminUrl });
   await client.connect();
   try {
-    for (const [role, password] of Object.entries(options.passwords)) await makeRole(client, `trayward_${role}`, password);
+    for (const role of ['owner', 'app', 'queue', 'readonly'] as const) await makeRole(client, `trayward_${role}`, options.passwords[role]);
     await makeDatabase(client, options.database);
   } finally {
     await client.end();
