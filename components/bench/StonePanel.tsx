@@ -2,6 +2,7 @@ import { useEffect, useRef } from 'react';
 import type { Text as NativeText } from 'react-native';
 import type { BenchStone, BenchView } from '@shared/api/bench';
 import { useSession } from '@/components/api';
+import { headingName } from '@/components/catalogue/words';
 import { ReadingForm } from '@/components/readings/ReadingForm';
 import { useInstrumentsQuery } from '@/components/readings/instruments';
 import { Card, Failed, Heading, LinkButton, Loading, Notice, Row, Stack, StateBadge, Text, useAnnounce } from '@/components/ui';
@@ -32,7 +33,7 @@ export function StonePanel({ loanId, view, stone }: { loanId: string; view: Benc
       <Row align="flex-start" gap="lg">
         {stone.opened ? <FigureOfSpecies species={stone.opened.species} size={76} /> : null}
         <Stack gap="xxs" style={{ flex: 1, minWidth: 0 }}>
-          <Heading level={2} focusable ref={heading}>{stone.opened ? `Jar ${stone.slot}: ${stone.opened.speciesName}` : `Jar ${stone.slot}`}</Heading>
+          <Heading level={2} focusable ref={heading}>{stone.opened ? `Jar ${stone.slot}: ${headingName(stone.opened.speciesName)}` : `Jar ${stone.slot}`}</Heading>
           <Text tone="soft">{stone.neutralDescription}</Text>
           {stone.marks ? <Text size="quiet" tone="soft">{`Marks: ${stone.marks}`}</Text> : null}
           <StateBadge {...stoneBadge(stone)} />

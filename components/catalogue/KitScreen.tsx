@@ -3,30 +3,36 @@ import { useState } from 'react';
 import type { KitView, StoneRow } from '@shared/api/kits';
 import { LabelsCard } from '@/components/labels/LabelsCard';
 import { RequireRole } from '@/components/shell';
+import { useBreakpoints } from '@/components/theme';
 import { Card, EmptyState, Failed, LinkButton, List, ListRow, Loading, Money, Mono, PageFrame, Row, Stack, StateBadge, Tabs, Text } from '@/components/ui';
 import { FigureOfSpecies } from '@/components/ui/FigureOfSpecies';
 import { CustodyList } from './CustodyList';
 import { KitSettings } from './KitSettings';
 import { useKitQuery } from './queries';
 import { summaryOf } from './recordWords';
-import { placeBadges, standingBadges } from './words';
+import { StoneAside } from './StoneAside';
+import { headingName, placeBadges, standingBadges } from './words';
 
 type Part = 'stones' | 'labels' | 'custody' | 'kit';
 
 /** One kit: its stones and what their records lack, its labels, its chain of events, its own details. */
 export function KitScreen() {
-  const { kitId } = useLocalSearchParams<{ kitId: string }>();
+  const { kitId, stone: stoneId } = useLocalSearchParams<{ kitId: string; stone?: string }>();
   const kit = useKitQuery(kitId);
+  const { wide } = useBreakpoints();
+  const chosen = kit.data?.stones.find((stone) => stone.id === stoneId) ?? kit.data?.stones[0];
   return (
     <RequireRole roles={['instructor', 'admin']}>
       <PageFrame
         title={kit.data?.title ?? 'Kit'}
-        {...(kit.data ? { eyebrow: `Kit ${kit.data.number}`, beside: <StateBadge {...placeBadges[kit.data.place]} />, lead: leadFor(kit.data) } : {})}
+        {...(kit.data ? { eyebrow: `Kit ${kit.data.number}`, lead: leadFor(kit.data) } : {})}
+        {...(wide && chosen ? { aside: <StoneAside stoneId={chosen.id} />, asideLabel: 'Stone' } : {})}
         back={{ label: 'Kits', to: '/kits' }}
       >
+        {kit.data ? <StateBadge {...placeBadges[kit.data.place]} /> : null}
         {kit.isPending ? <Loading label="Fetching the kit" /> : null}
         {kit.isError ? <Failed error={kit.error} onRetry={() => void kit.refetch()} /> : null}
-        {kit.data ? <KitParts kit={kit.data} /> : null}
+        {kit.data ? <KitParts kit={kit.data} chosenId={wide ? (chosen?.id ?? null) : null} /> : null}
       </PageFrame>
     </RequireRole>
   );
@@ -39,7 +45,7 @@ function leadFor(kit: KitView): string {
   return `Students see it as “${kit.neutralTitle}”.`;
 }
 
-function KitParts({ kit }: { kit: KitView }) {
+function KitParts({ kit, chosenId }: { kit: KitView; chosenId: string | null }) {
   const [part, setPart] = useState<Part>('stones');
   return (
     <Stack gap="lg">
@@ -50,7 +56,7 @@ function KitParts({ kit }: { kit: KitView }) {
         onChange={setPart}
         tabs={[{ value: 'stones', label: 'Stones' }, { value: 'labels', label: 'Labels' }, { value: 'custody', label: 'Custody' }, { value: 'kit', label: 'Details' }]}
       >
-        {part === 'stones' ? <Stones kit={kit} /> : null}
+        {part === 'stones' ? <Stones kit={kit} chosenId={chosenId} /> : null}
         {part === 'labels' ? <LabelsCard kit={kit} /> : null}
         {part === 'custody' ? <CustodyList of={{ kitId: kit.id }} /> : null}
         {part === 'kit' ? <KitSettings kit={kit} /> : null}
@@ -59,7 +65,7 @@ function KitParts({ kit }: { kit: KitView }) {
   );
 }
 
-function Stones({ kit }: { kit: KitView }) {
+function Stones({ kit, chosenId }: { kit: KitView; chosenId: string | null }) {
   return (
     <Stack gap="lg">
       {kit.stones.length === 0 ? (
@@ -72,9 +78,10 @@ function Stones({ kit }: { kit: KitView }) {
                 key={stone.id}
                 inset
                 rule={index < kit.stones.length - 1}
-                to={`/stones/${stone.id}`}
+                to={chosenId === null ? `/stones/${stone.id}` : `/kits/${kit.id}?stone=${stone.id}`}
+                chosen={stone.id === chosenId}
                 before={<FigureOfSpecies species={stone.species} size={44} />}
-                title={`${stone.slot} ${stone.speciesName}`}
+                title={`${stone.slot} ${headingName(stone.speciesName)}`}
                 detail={<StoneDetail stone={stone} />}
                 after={<StoneState stone={stone} />}
               />

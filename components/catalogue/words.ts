@@ -39,3 +39,6 @@ export const flagHints = {
   fragile: 'cleaves or chips easily',
   coated_or_filled: 'liquids and heat may harm it',
 } as const;
+
+/** A trade name as a heading writes it. */
+export const headingName = (name: string): string => name.charAt(0).toUpperCase() + name.slice(1);

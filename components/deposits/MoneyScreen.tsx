@@ -64,7 +64,7 @@ function Deposits({ view }: { view: MoneyView }) {
         rowTo={(row) => `/loans/${row.loanId}`}
         empty={<EmptyState title="None yet">A deposit appears here when a student pays one.</EmptyState>}
         columns={[
-          { key: 'kit', header: 'Kit', cell: (row) => <Mono strong>{row.kitNumber}</Mono> },
+          { key: 'kit', header: 'Kit', cell: (row) => <Mono strong>{`Kit ${row.kitNumber}`}</Mono> },
           { key: 'who', header: 'Borrower', cell: (row) => row.borrowerName },
           { key: 'amount', header: 'Deposit', align: 'right', cell: (row) => <Money amountMinor={row.amountMinor} currency={row.currency} /> },
           { key: 'state', header: 'State', cell: (row) => wordFor(row.state) },

@@ -12,17 +12,27 @@ import { loanBadge } from './words';
 /** Somebody else's loan, for staff: where it stands, its money, its chain of events, and what can be done for the borrower. */
 export function StaffLoan({ view }: { view: StaffLoanView }) {
   const { hasRole } = useSession();
-  const { loan } = view;
-  const atBench = loan.state === 'returned' || loan.state === 'checking' || loan.state === 'set_aside';
   return (
     <PageFrame
       title={`Kit ${view.kitNumber}, ${view.borrower.name}`}
       eyebrow={view.title}
       back={{ label: hasRole('admin') ? 'Desk' : 'Bench', to: hasRole('admin') ? '/desk' : '/bench' }}
-      beside={<StateBadge {...loanBadge(loan)} />}
       aside={<CustodyCard view={view} />}
       asideLabel="Custody"
     >
+      <StaffLoanBody view={view} />
+    </PageFrame>
+  );
+}
+
+/** What staff see and do about one loan; the desk shows the same beside its list. */
+export function StaffLoanBody({ view }: { view: StaffLoanView }) {
+  const { hasRole } = useSession();
+  const { loan } = view;
+  const atBench = loan.state === 'returned' || loan.state === 'checking' || loan.state === 'set_aside';
+  return (
+    <Stack gap="lg">
+      <StateBadge {...loanBadge(loan)} />
       <Facts view={view} />
       {loan.state === 'reserved' ? <TakeOut loan={loan} /> : null}
       {loan.state === 'out' ? <LinkButton kind="primary" label={`Return it for ${view.borrower.name}`} to={`/loans/${loan.id}/return`} /> : null}
@@ -30,7 +40,7 @@ export function StaffLoan({ view }: { view: StaffLoanView }) {
       {hasRole('admin') && (loan.state === 'set_aside' || loan.outcome !== null) ? <SettlementCard loanId={loan.id} /> : null}
       <JarList loan={loan} />
       {hasRole('admin') && loan.deposit.state !== 'none' ? <StatementCard loanId={loan.id} /> : null}
-    </PageFrame>
+    </Stack>
   );
 }
 
