@@ -3,7 +3,7 @@ import type { BenchVerdict } from '@shared/api/bench';
 import type { Attribute, Contribution } from '@shared/api/evidence';
 import type { RecordedValueView } from '@shared/api/kits';
 import { attributeWords, categoryLabel, decimalsOf } from '@/components/readings/attributes';
-import { a, space, useBreakpoints, useTheme } from '@/components/theme';
+import { a, space, useTheme } from '@/components/theme';
 import { Card, Mono, Reading, Text } from '@/components/ui';
 
 /** Recorded and now, side by side, with E_n and what each reading weighed. A real table, narrow enough for a phone. */
@@ -27,7 +27,7 @@ export function RecordAndNow({ verdict, record }: { verdict: BenchVerdict; recor
         </tbody>
       </table>
       <Text size="quiet" tone="soft">
-        {`Eₙ within ±1 is agreement within the expanded uncertainties (ISO 13528). “Weighs” is what a reading adds to the log₁₀ of the likelihood ratio: above 0 for the recorded stone, below for another.`}
+        {`En within ±1 is agreement within the expanded uncertainties (ISO 13528). “Weighs” is what a reading adds to the log₁₀ of the likelihood ratio: above 0 for the recorded stone, below for another.`}
         {unread.length > 0 ? ` Recorded but not read now: ${unread.map((value) => attributeWords[value.attribute].label.toLowerCase()).join(', ')}.` : ''}
       </Text>
     </Card>
@@ -51,7 +51,7 @@ function Line({ row }: { row: Contribution }) {
       <th scope="row" style={{ ...cell, textAlign: 'left', paddingLeft: 0, fontWeight: 'normal' }}>
         <Text strong>{unit ? `${label}, ${unit}` : label}</Text>
         <View style={styles.below}>
-          <Mono size="small" tone="soft">{`${row.en === null ? '' : `Eₙ ${row.en.toFixed(1)}, `}weighs ${signed(row.log10LR)}`}</Mono>
+          <Text size="small" tone="soft">{`${row.en === null ? '' : `En ${row.en.toFixed(1)}, `}weighs ${signed(row.log10LR)}`}</Text>
         </View>
       </th>
       <td style={cell}>
@@ -70,14 +70,13 @@ const differs = (row: Contribution): boolean => (row.en === null ? row.log10LR <
 const signed = (value: number): string => (value >= 0 ? `+${value.toFixed(1)}` : `−${Math.abs(value).toFixed(1)}`);
 
 function Value({ attribute, value, u, off = false }: { attribute: Attribute; value: Contribution['value'] | null; u: number | null; off?: boolean }) {
-  const { phone } = useBreakpoints();
   const tone = off ? 'different' : 'ink';
   if (value === null) return <Mono tone="soft">–</Mono>;
   if (value === 'over_limit') return <Mono tone={tone}>over limit</Mono>;
   if (typeof value === 'string') return <Mono tone={tone} strong={off}>{categoryLabel(attribute, value)}</Mono>;
   const decimals = decimalsOf[attribute];
-  // A phone has room for the value and, under it, its uncertainty.
-  if (phone && u !== null && u > 0) {
+  // The pane is narrow: the value and, under it, its uncertainty.
+  if (u !== null && u > 0) {
     return (
       <View>
         <Mono tone={tone} strong={off} align="right">{value.toFixed(decimals ?? 3)}</Mono>
