@@ -5,7 +5,7 @@ import path from 'node:path';
 import { children } from './lib/children.mjs';
 import { freePort } from './lib/ports.mjs';
 import { keptState } from './lib/secrets.mjs';
-import { stackEnvironment, startStack } from './lib/stack.mjs';
+import { helperProcesses, launch, mainProcesses, stackEnvironment, untilReady } from './lib/stack.mjs';
 import { ensureWebExport } from './lib/webExport.mjs';
 
 const { folder, database, postgresPort, passwords, web, extra } = JSON.parse(process.argv[2]);
@@ -27,12 +27,15 @@ async function prepare() {
 
 async function obey({ kill, start }, environment) {
   if (kill) await processes.kill(kill);
-  if (start) await startStack({ processes, environment, names: [start] });
+  if (!start) return;
+  launch({ processes, environment, names: [start] });
+  await untilReady({ processes, environment });
 }
 
 try {
   const environment = await prepare();
-  await startStack({ processes, environment });
+  launch({ processes, environment, names: [...helperProcesses, ...mainProcesses] });
+  await untilReady({ processes, environment });
   // One command after the other, in the order they came.
   let last = Promise.resolve();
   process.on('message', ({ id, ...command }) => {

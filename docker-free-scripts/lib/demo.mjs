@@ -6,7 +6,7 @@ import { keepOrChoosePort, portIsFree } from './ports.mjs';
 import { cluster } from './postgres.mjs';
 import { PlainError, say } from './say.mjs';
 import { keptState } from './secrets.mjs';
-import { stackEnvironment, startStack } from './stack.mjs';
+import { helperProcesses, launch, mainProcesses, stackEnvironment, untilReady } from './stack.mjs';
 import { ensureWebExport } from './webExport.mjs';
 
 const demoPassword = 'crossed-polars';
@@ -50,10 +50,12 @@ async function start({ folder, port, host, state, save, database, processes, sig
   const ports = await preparePorts({ port, state, save, database });
   const files = path.join(folder, 'files');
   mkdirSync(files, { recursive: true });
+  const environment = stackEnvironment({ mode: 'demo', state, ports, folder, host, publicUrl: process.env.PUBLIC_URL, webFolder: '' });
+  launch({ processes, environment, names: helperProcesses });
   const prepared = prepareDatabase({ port: ports.postgres, passwords: state.passwords, superuserPassword: state.superuserPassword, seed: true, files });
   const [webFolder] = await Promise.all([ensureWebExport({ signal }), prepared]);
-  const environment = stackEnvironment({ mode: 'demo', state, ports, folder, host, publicUrl: process.env.PUBLIC_URL, webFolder });
-  await startStack({ processes, environment });
+  launch({ processes, environment: { ...environment, WEB_DIR: webFolder }, names: mainProcesses });
+  await untilReady({ processes, environment });
   greet({ environment, folder });
 }
 

@@ -44,9 +44,16 @@ const stackProcesses = {
   worker: 'server/jobs/main.ts',
 };
 
-/** Starts one or all of a stack's processes and waits until all are healthy, or tells which one died and why. */
-export async function startStack({ processes, environment, names = Object.keys(stackProcesses) }) {
+/** What needs neither database nor web app and can start while both are being prepared. */
+export const helperProcesses = ['payment-fake', 'inbox'];
+export const mainProcesses = ['server', 'worker'];
+
+export function launch({ processes, environment, names }) {
   for (const name of names) processes.start(name, runTs(stackProcesses[name]), environment);
+}
+
+/** Waits until the whole stack is healthy, or tells which process died and why. */
+export async function untilReady({ processes, environment }) {
   const died = processes.death.then(({ name, reason, lines }) => {
     throw new PlainError(`The ${name} process ${reason} while starting. Its last lines:\n${lines}`);
   });
