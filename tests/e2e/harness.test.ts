@@ -1,5 +1,5 @@
 import type { Browser } from 'playwright-core';
-import { openBrowser, openPage, paymentFakeControl, readInbox, screenshot, startStack, type Stack } from '../support/e2e';
+import { openBrowser, openPage, paymentFakeControl, people, readInbox, screenshot, settled, signIn, startStack, type Stack } from '../support/e2e';
 
 // What the other end-to-end tests stand on; when one of these fails, look here before anywhere else.
 jest.setTimeout(180_000);
@@ -27,7 +27,18 @@ it('serves the web app, which shows the sign-in page on a phone and on a wide sc
   }
 });
 
-it('knows the demo people, and knows them still after the server was killed', async () => {
+it('lets each of the demo people in, without an error on their first screen', async () => {
+  for (const [who, email] of Object.entries(people)) {
+    const { page, problems } = await openPage(browser, { baseUrl: stack.url });
+    await signIn(page, email);
+    await settled(page);
+    await screenshot(page, `first-screen-${who}`);
+    expect({ who, problems }).toEqual({ who, problems: [] });
+    await page.context().close();
+  }
+});
+
+it('knows the demo people still after the server was killed', async () => {
   const signIn = (): Promise<Response> =>
     fetch(`${stack.url}/api/v1/sessions`, {
       method: 'POST',

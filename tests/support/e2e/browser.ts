@@ -40,6 +40,15 @@ export async function openPage(browser: Browser, options: PageOptions): Promise<
   return { page, problems };
 }
 
+/**
+ * Waits until a screen shows its content: a heading that says the state, and nothing that is still loading.
+ * (Playwright's `networkidle` does not serve: an answer whose body the app has no use for counts as under way for ever.)
+ */
+export async function settled(page: Page): Promise<void> {
+  await page.getByRole('heading', { level: 1 }).first().waitFor();
+  await page.getByRole('status').filter({ hasText: /…\s*$/ }).first().waitFor({ state: 'hidden' });
+}
+
 const screens = path.join(__dirname, '..', '..', '..', 'test-results', 'screens');
 
 /** Keeps a picture of the whole page under test-results/screens, for people to look at. */
