@@ -14,10 +14,10 @@ export function AddReading({ drafts, onAdd }: { drafts: readonly DraftReading[];
   return (
     <View>
       <SelectField
-        label="Add a reading"
+        label="Another test or a repeat"
         options={options}
         value=""
-        placeholder="Another test, or a repeat …"
+        placeholder="Choose what else you read …"
         onChange={(value) => {
           const attribute = attributeFrom(value);
           if (attribute) onAdd(attribute);

@@ -4,9 +4,11 @@ import type { KitRow, KitView, StoneRow } from '@shared/api/kits';
 import type { SessionView } from '@shared/api/sessions';
 import { people, type Stack } from '../../support/e2e';
 
+export interface Answer<T> { status: number; body: T }
+
 /** The API as a small client, signed in as one person; for what a walk needs to know beforehand or checks afterwards. */
 export async function api(stack: Pick<Stack, 'url'>, email: string) {
-  const call = async <T>(method: string, path: string, body?: object, token?: string): Promise<{ status: number; body: T }> => {
+  const call = async <T>(method: string, path: string, body?: object, token?: string): Promise<Answer<T>> => {
     const answer = await fetch(`${stack.url}/api/v1${path}`, {
       method,
       headers: {
@@ -22,8 +24,8 @@ export async function api(stack: Pick<Stack, 'url'>, email: string) {
   const session = await call<SessionView>('POST', '/sessions', { email, password: 'crossed-polars' });
   const token = session.body.accessToken;
   return {
-    get: <T>(path: string) => call<T>('GET', path, undefined, token),
-    post: <T>(path: string, body?: object) => call<T>('POST', path, body, token),
+    get: <T>(path: string): Promise<Answer<T>> => call<T>('GET', path, undefined, token),
+    post: <T>(path: string, body?: object): Promise<Answer<T>> => call<T>('POST', path, body, token),
   };
 }
 
