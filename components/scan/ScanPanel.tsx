@@ -40,7 +40,8 @@ export function ScanPanel({ prompt, onCode, busy, error, cameraFirst = false }: 
     if (from === 'camera' && last.current.code === reading.code && now - last.current.at < repeatMs) return;
     last.current = { code: reading.code, at: now };
     setFault(undefined);
-    setText('');
+    // What the camera sees must not wipe a code that is being typed.
+    if (from === 'typed') setText('');
     onCode(reading.code);
   };
 

@@ -74,8 +74,8 @@ it('reads the printed labels of the kit and its first jar from a camera', async 
     await page.getByRole('button', { name: 'Scan with the camera' }).click();
     await page.getByText(`1 of ${kit.stones.length} seen`).waitFor({ timeout: 60_000 });
     await screenshot(page, 'camera-phone');
-    await scanJars(page, kit, 1);
-    await page.getByRole('heading', { name: 'Kit 021 is almost yours' }).waitFor();
+    await page.getByRole('button', { name: 'Close the camera' }).click();
+    await page.getByRole('button', { name: 'Scan with the camera' }).waitFor();
     expect(problems).toEqual([]);
   } finally {
     await seeing.close();
