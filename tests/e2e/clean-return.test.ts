@@ -1,8 +1,7 @@
 import type { Browser } from 'playwright-core';
-import type { MoneyView } from '@shared/api/money';
 import { labelImage } from '../support/labelImage';
 import { makeCameraFeed, openBrowser, openPage, paymentFakeControl, people, screenshot, signIn, startStack, waitForMail, type Stack } from '../support/e2e';
-import { api, codeOf, kitOf, recordedReadings } from './steps/kits';
+import { codeOf, kitOf, moneyAtRest, recordedReadings } from './steps/kits';
 import { acceptAndGoToPay, bringBack, goodCard, handIn, openCheck, payWith, reserve, scanJars } from './steps/walk';
 
 jest.setTimeout(420_000);
@@ -47,8 +46,7 @@ it.each([['phone', '014'], ['wide', '009']] as const)('lends a kit, takes it bac
   await student.page.reload();
   await student.page.getByRole('heading', { name: `Kit ${number} is back, all is well` }).waitFor();
   expect((await kitOf(stack, number)).place).toBe('shelf');
-  const money = await (await api(stack, people.admin)).get<MoneyView>('/money');
-  expect(money.body).toMatchObject({ heldMinor: 0, chargedMinor: 0, keptMinor: 0, ledgerSumMinor: 0, unfinishedSteps: 0 });
+  expect(await moneyAtRest(stack)).toMatchObject({ heldMinor: 0, chargedMinor: 0, keptMinor: 0, ledgerSumMinor: 0 });
   const [books] = await paymentFakeControl(stack).books();
   expect(books).toMatchObject({ heldMinor: 0, capturedMinor: 0, refundedMinor: 0 });
   expect([...student.problems, ...instructor.problems]).toEqual([]);

@@ -1,6 +1,6 @@
 import type { Browser } from 'playwright-core';
 import { openBrowser, openPage, paymentFakeControl, people, screenshot, signIn, startStack, waitForMail, type Stack } from '../support/e2e';
-import { kitOf } from './steps/kits';
+import { kitOf, moneyAtRest } from './steps/kits';
 import { acceptAndGoToPay, declinedCard, goodCard, goToPay, payWith, reserve, scanJars } from './steps/walk';
 
 jest.setTimeout(300_000);
@@ -67,8 +67,14 @@ it('cancels a payment that completes after the kit was given back, and tells the
   await payWith(page, goodCard);
   await waitForMail(stack, { to: people.otherStudent, subject: /Kit 014: your payment came after the booking had ended/, timeoutMs: 60_000 });
   await paymentFakeControl(stack).clearFaults();
+  await page.goto(loanPath);
+  await page.getByRole('heading', { name: 'Kit 014 was not taken out' }).waitFor();
+  await expectFree('014');
+  // Only the hold of the loan that did go out, by the first test, is left.
+  const left = (await kitOf(stack, '021')).depositMinor;
+  expect(await moneyAtRest(stack)).toMatchObject({ heldMinor: left, chargedMinor: 0, ledgerSumMinor: 0 });
   const books = await paymentFakeControl(stack).books();
-  expect(books[0]?.heldMinor).toBe((await kitOf(stack, '021')).depositMinor);
+  expect(books[0]).toMatchObject({ heldMinor: left, capturedMinor: 0 });
 });
 
 async function expectFree(number: string): Promise<void> {

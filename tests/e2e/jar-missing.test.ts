@@ -1,6 +1,6 @@
 import type { Browser } from 'playwright-core';
-import { openBrowser, openPage, people, signIn, startStack, type Stack } from '../support/e2e';
-import { codeOf, kitOf, recordedReadings } from './steps/kits';
+import { openBrowser, openPage, paymentFakeControl, people, signIn, startStack, waitForMail, type Stack } from '../support/e2e';
+import { codeOf, kitOf, moneyAtRest, recordedReadings } from './steps/kits';
 import { handIn, reserve, takeOut, typeCode } from './steps/walk';
 
 jest.setTimeout(300_000);
@@ -25,6 +25,7 @@ it('stops a take-out when a jar is not in the kit, and keeps the kit for an admi
   await page.getByRole('dialog').getByRole('button', { name: 'It is not there: stop' }).click();
   await page.getByRole('heading', { name: 'Kit 009 was not taken out' }).waitFor();
   expect((await kitOf(stack, '009')).place).toBe('set_aside');
+  await waitForMail(stack, { to: people.admin, subject: /Kit 009 is set aside: jar A not there/ });
 });
 
 it('lets the admin settle a jar that came back empty, with a reason, and keep part of the deposit', async () => {
@@ -72,4 +73,8 @@ it('lets the admin settle a jar that came back empty, with a reason, and keep pa
   await admin.getByText('Deposit decided').waitFor();
   await student.reload();
   await student.getByRole('heading', { name: 'What was kept, and why' }).waitFor();
+  await waitForMail(stack, { to: people.student, subject: /Kit 021: your deposit is settled/, timeoutMs: 60_000 });
+  expect(await moneyAtRest(stack)).toMatchObject({ heldMinor: 0, chargedMinor: 0, keptMinor: 2000, ledgerSumMinor: 0 });
+  const [books] = await paymentFakeControl(stack).books();
+  expect(books).toMatchObject({ heldMinor: 0, capturedMinor: 2000, refundedMinor: 0 });
 });

@@ -1,6 +1,8 @@
 import { randomUUID } from 'node:crypto';
+import { setTimeout as pause } from 'node:timers/promises';
 import type { Page as ListPage } from '@shared/api/common';
 import type { KitRow, KitView, StoneRow } from '@shared/api/kits';
+import type { MoneyView } from '@shared/api/money';
 import type { SessionView } from '@shared/api/sessions';
 import { people, type Stack } from '../../support/e2e';
 
@@ -36,6 +38,18 @@ export async function kitOf(stack: Pick<Stack, 'url'>, number: string): Promise<
   const row = list.body.items.find((kit) => kit.number === number);
   if (row === undefined) throw new Error(`The demo has no kit ${number}.`);
   return (await admin.get<KitView>(`/kits/${row.id}`)).body;
+}
+
+/** The school's money once every step at the payment service is done; a mail may come a moment before its money has moved. */
+export async function moneyAtRest(stack: Pick<Stack, 'url'>, timeoutMs = 60_000): Promise<MoneyView> {
+  const admin = await api(stack, people.admin);
+  const deadline = Date.now() + timeoutMs;
+  for (;;) {
+    const { body } = await admin.get<MoneyView>('/money');
+    if (body.unfinishedSteps === 0) return body;
+    if (Date.now() > deadline) throw new Error(`${body.unfinishedSteps} steps at the payment service are unfinished after ${timeoutMs} ms.`);
+    await pause(250);
+  }
 }
 
 export const codeOf = (labelled: { label: { code: string } | null }): string => {
